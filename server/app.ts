@@ -5,10 +5,12 @@ import { rateLimit } from 'express-rate-limit';
 import { pinoHttp } from 'pino-http';
 import type { Context } from './context';
 import { Refusal } from './errors';
+import { describeApi } from './openapi';
 import { mountRoutes } from './middleware/mount';
 import { answerProblems, unknownRoute } from './middleware/problems';
 import { readSession, requireOwnHeader } from './middleware/session';
 import { ALL_ROUTES } from './routes/all';
+import { SOFTWARE_VERSION } from './version';
 
 const YEAR_MS = 365 * 86_400_000;
 
@@ -44,6 +46,10 @@ export function createApp(context: Context): Express {
   app.get('/readyz', async (_req, res) => {
     await context.database.pool.query('select 1');
     res.json({ ok: true });
+  });
+  const description = describeApi(ALL_ROUTES, SOFTWARE_VERSION);
+  app.get('/api/openapi.json', (_req, res) => {
+    res.json(description);
   });
   app.use('/api', requireOwnHeader);
   app.post(['/api/session', '/api/setup'], signInLimit(context));

@@ -93,3 +93,18 @@ BEGIN
   EXECUTE format('ALTER TABLE public.%I ATTACH PARTITION bulk.%I FOR VALUES IN (%s)', parent, part_name, part);
   EXECUTE format('ANALYZE bulk.%I', part_name);
 END $$;
+--> statement-breakpoint
+-- A block of entry ids for a load that assigns them while it streams; gaps are harmless.
+CREATE FUNCTION reserve_entry_ids(how_many integer) RETURNS bigint
+  LANGUAGE plpgsql SECURITY DEFINER SET search_path = pg_catalog, public AS $$
+DECLARE
+  first bigint;
+BEGIN
+  IF how_many < 1 OR how_many > 10000000 THEN
+    RAISE EXCEPTION 'how_many out of range: %', how_many USING ERRCODE = '22003';
+  END IF;
+  PERFORM pg_advisory_xact_lock(hashtext('reserve_entry_ids'));
+  first := nextval('public.entry_id_seq');
+  PERFORM setval('public.entry_id_seq', first + how_many - 1);
+  RETURN first;
+END $$;

@@ -1,7 +1,9 @@
 import type { Route } from '../route';
+import { catalogueRoutes } from './catalogues';
+import { fileRoutes } from './files';
 import { groupRoutes } from './groups';
 import { jobRoutes } from './jobs';
 import { sessionRoutes } from './session';
 
 /** Every route of the API, in the order in which they are mounted; the permission test walks over this list. */
-export const ALL_ROUTES: readonly Route[] = [...sessionRoutes, ...groupRoutes, ...jobRoutes];
+export const ALL_ROUTES: readonly Route[] = [...sessionRoutes, ...groupRoutes, ...fileRoutes, ...catalogueRoutes, ...jobRoutes];

@@ -142,8 +142,16 @@ export class JobCancelled extends Error {
 }
 
 type Work = (context: Context, run: JobRun) => Promise<void>;
-/** Called in the closing transaction of a job that failed or was cancelled, to leave its noun in a clear state. */
-type Unwind = (tx: Tx, run: Pick<JobRun, 'id' | 'actor' | 'payload'>, state: 'failed' | 'cancelled') => Promise<void>;
+/**
+ * Called in the closing transaction of a job that failed or was cancelled, to leave its noun in a clear state; what it
+ * returns (if anything) is done after the commit, for what no transaction covers.
+ */
+type Unwind = (
+  context: Context,
+  tx: Tx,
+  run: Pick<JobRun, 'id' | 'actor' | 'payload'>,
+  state: 'failed' | 'cancelled',
+) => Promise<(() => Promise<void>) | null>;
 
 export interface JobKindWork {
   work: Work;
@@ -222,9 +230,9 @@ async function close(
   scope: Scope,
   run: JobRun,
   closing: Closing,
-  unwind?: (tx: Tx) => Promise<void>,
+  unwind?: (tx: Tx) => Promise<(() => Promise<void>) | null>,
 ): Promise<void> {
-  await inTransaction(context.database, scope, async (tx) => {
+  const cleanUp = await inTransaction(context.database, scope, async (tx) => {
     await tx
       .update(job)
       .set({
@@ -234,9 +242,11 @@ async function close(
         progressAt: sql`now()`,
       })
       .where(and(eq(job.id, run.id), isNull(job.finishedAt)));
-    await unwind?.(tx);
+    const after = await unwind?.(tx);
     await announce(tx, run.id);
+    return after;
   });
+  await cleanUp?.();
 }
 
 async function closeBroken(
@@ -248,7 +258,9 @@ async function closeBroken(
 ): Promise<void> {
   if (error instanceof JobCancelled) {
     const message = 'Cancelled; nothing was kept.';
-    await close(context, scope, run, { state: 'cancelled', message }, (tx) => kind.unwind(tx, run, 'cancelled'));
+    await close(context, scope, run, { state: 'cancelled', message }, (tx) =>
+      kind.unwind(context, tx, run, 'cancelled'),
+    );
     return;
   }
   const refusal =
@@ -263,6 +275,6 @@ async function closeBroken(
       message: refusal.message,
       error: { code: refusal.code, detail: refusal.message, hint: refusal.hint },
     },
-    (tx) => kind.unwind(tx, run, 'failed'),
+    (tx) => kind.unwind(context, tx, run, 'failed'),
   );
 }

@@ -162,6 +162,8 @@ export const mappingPreview = z.strictObject({
   setAside: z.array(setAsideRow),
 });
 
+export type MappingPreview = z.infer<typeof mappingPreview>;
+
 /** What looking at the beginning of an uploaded file tells. */
 export const fileInspection = z.strictObject({
   dialect: textDialect,
@@ -188,3 +190,4 @@ export const UNREADABLE_FILE_CODES = [
   'file-gzip-bomb',
   'file-one-column',
 ] as const;
+export type UnreadableFileCode = (typeof UNREADABLE_FILE_CODES)[number];

@@ -1,0 +1,28 @@
+/** Position columns, the input of everything in this folder, and the checks at its door. */
+
+/** One row per source: right ascension 0..360 and declination -90..90, degrees. The row number is the id. */
+export interface PositionColumns {
+  readonly raDeg: Float64Array;
+  readonly decDeg: Float64Array;
+}
+
+/** Throws RangeError, with name, value and index, for columns of unequal length or positions that are not on the sky. */
+export function checkPositions(name: string, { raDeg, decDeg }: PositionColumns): void {
+  if (raDeg.length !== decDeg.length) {
+    throw new RangeError(`${name}: raDeg has ${raDeg.length} rows, decDeg has ${decDeg.length}`);
+  }
+  for (let row = 0; row < raDeg.length; row += 1) {
+    const ra = raDeg[row] ?? NaN;
+    const dec = decDeg[row] ?? NaN;
+    // Written so that NaN fails.
+    if (!(ra >= 0 && ra <= 360)) throw new RangeError(`${name}.raDeg[${row}] must be 0..360, not ${ra}`);
+    if (!(dec >= -90 && dec <= 90)) throw new RangeError(`${name}.decDeg[${row}] must be -90..90, not ${dec}`);
+  }
+}
+
+/** Throws RangeError for a radius (arcsec) that is not above 0 and at most `maxArcsec`. */
+export function checkRadius(radiusArcsec: number, maxArcsec: number): void {
+  if (!(radiusArcsec > 0 && radiusArcsec <= maxArcsec)) {
+    throw new RangeError(`radiusArcsec must be above 0 and at most ${maxArcsec}, not ${radiusArcsec}`);
+  }
+}
