@@ -51,12 +51,8 @@ export async function answers(url: string): Promise<boolean> {
   }
 }
 
-/** The lines of postmaster.pid: process id, data folder, start time, port, …, and the state in line 8. */
-export function postmasterFile(home: ClusterHome): { pid: number; port: number; state: string } | null {
-  const file = path.join(home.data, 'postmaster.pid');
-  if (!existsSync(file)) return null;
-  const lines = readFileSync(file, 'utf8').split('\n');
-  return { pid: Number(lines[0]), port: Number(lines[3]), state: (lines[7] ?? '').trim() };
+function postmasterFile(home: ClusterHome): string {
+  return path.join(home.data, 'postmaster.pid');
 }
 
 /**
@@ -64,14 +60,16 @@ export function postmasterFile(home: ClusterHome): { pid: number; port: number; 
  * (they hold the shared memory), and a postmaster.pid whose number now belongs to somebody else.
  */
 export async function clearRemains(home: ClusterHome): Promise<void> {
-  const left = postmasterFile(home);
-  const isOurs = left !== null && commandLineOf(left.pid).includes(home.data);
-  if (isOurs) {
-    signal(left.pid, 'SIGINT');
-    await waitUntil(() => postmasterFile(home) === null, STOP_LIMIT_MS);
+  const file = postmasterFile(home);
+  if (existsSync(file)) {
+    const pid = Number(readFileSync(file, 'utf8').split('\n')[0]);
+    if (commandLineOf(pid).includes(home.data)) {
+      signal(pid, 'SIGINT');
+      await waitUntil(() => !existsSync(file), STOP_LIMIT_MS);
+    }
   }
   await endProcesses(postgresProcessesIn(home.data), 'SIGQUIT', 3000);
-  rmSync(path.join(home.data, 'postmaster.pid'), { force: true });
+  rmSync(file, { force: true });
 }
 
 /** Makes the cluster in a folder beside and renames it when complete, so that half a cluster is never started. */
@@ -154,7 +152,7 @@ async function stopServer(home: ClusterHome, child: ChildProcess): Promise<void>
   if (hasEnded()) return;
   // SIGINT is PostgreSQL's fast shutdown; SIGTERM would wait for every client to leave.
   child.kill('SIGINT');
-  if (await waitUntil(() => hasEnded() && postmasterFile(home) === null, STOP_LIMIT_MS)) return;
+  if (await waitUntil(() => hasEnded() && !existsSync(postmasterFile(home)), STOP_LIMIT_MS)) return;
   child.kill('SIGQUIT');
   await waitUntil(hasEnded, STOP_LIMIT_MS);
 }

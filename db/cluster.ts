@@ -10,7 +10,6 @@ import {
   clearRemains,
   initialise,
   launchServer,
-  postmasterFile,
   type RunningServer,
 } from './cluster-server';
 import type { ClusterSettings } from './cluster-settings';
@@ -19,6 +18,9 @@ import type { ClusterSettings } from './cluster-settings';
 export const OWNER_ROLE = 'idem_owner';
 
 const ADOPT_LIMIT_MS = 60_000;
+
+/** Any constant: two processes must not make the same database at the same time. */
+const CREATE_DATABASE_LOCK = 1_447_382_020;
 
 export interface ClusterOptions {
   /** Idem's data folder; the cluster goes into its folder `postgres`, the log into `logs`. */
@@ -71,6 +73,8 @@ async function startOwn(home: ClusterHome, lock: ProcessLock, options: ClusterOp
     server = await launchServer(home, binDir, { settings, port: options.port ?? null, logFile });
     await ensureOwnerRole(home, server.port);
     const running = server;
+    // Others wait for this note: it says that the server is ready, and where.
+    lock.write(String(running.port));
     return clusterOf(home, running.port, {
       exited: running.exited,
       async stop() {
@@ -102,9 +106,10 @@ function binariesFor(home: ClusterHome): string {
 async function portOfOther(home: ClusterHome, lockFile: string): Promise<number | null> {
   const deadline = performance.now() + ADOPT_LIMIT_MS;
   while (performance.now() < deadline) {
-    if (lockHolder(lockFile) === null) return null;
-    const file = postmasterFile(home);
-    if (file?.state.startsWith('ready') && (await answers(adminUrlOf(home, file.port)))) return file.port;
+    const holder = lockHolder(lockFile);
+    if (holder === null) return null;
+    if (holder.note !== '' && (await answers(adminUrlOf(home, Number(holder.note)))))
+      return Number(holder.note);
     await new Promise((resolve) => setTimeout(resolve, 50));
   }
   throw new Error(
@@ -124,6 +129,7 @@ function clusterOf(home: ClusterHome, port: number, own: Pick<Cluster, 'exited' 
     ownerUrl,
     async ensureDatabase(database) {
       await withClient(adminUrl, async (client) => {
+        await client.query('select pg_advisory_lock($1)', [CREATE_DATABASE_LOCK]);
         const { rowCount } = await client.query('select 1 from pg_database where datname = $1', [database]);
         if (rowCount !== 0) return;
         await client.query(`create database ${client.escapeIdentifier(database)} owner ${OWNER_ROLE}`);

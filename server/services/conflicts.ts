@@ -2,9 +2,9 @@ import { sql } from 'drizzle-orm';
 import { inTransaction, type Tx } from '../../db/client';
 import type { Conflict } from '../../shared/schemas/verdict';
 import type { Context, GroupActor } from '../context';
-import { partitionEntries, type Refused } from '../engine/partition';
+import { partitionEntries } from '../engine/partition';
 import { found } from '../errors';
-import { liveNumbers } from './identity';
+import { liveNumbers, type Refused } from './identity';
 import { verdictIdsByPair, selectConnected, selectEdges, selectKeptApart, type IdentityEdges } from './identity-edges';
 import { bigintArray } from './verdict-log';
 

@@ -1,11 +1,14 @@
 import { sql } from 'drizzle-orm';
 import type { Tx } from '../../db/client';
 import type { GroupActor } from '../context';
-import { partitionEntries, type Refused } from '../engine/partition';
+import { partitionEntries } from '../engine/partition';
 import { selectAllInvolved, selectConnected, selectEdges, type IdentityEdges } from './identity-edges';
 import { writeComponents, type Written } from './identity-write';
 import { lockRegistry } from './registry-lock';
 import { bigintArray } from './verdict-log';
+
+/** A 'same' verdict that is not carried out, with the pair that forbids it and the chain between. */
+export type Refused = ReturnType<typeof partitionEntries>['refused'][number];
 
 /** What a pass looks at: everything connected with some entries, or the whole group. */
 export type IdentityScope = { entries: readonly number[] } | 'group';
