@@ -6,6 +6,7 @@ const API_ORIGIN = process.env.IDEM_API_ORIGIN ?? 'http://127.0.0.1:8440';
 
 export default defineConfig({
   plugins: [react(), tailwindcss()],
+  publicDir: 'client/public',
   build: { outDir: 'dist/client', emptyOutDir: true, target: 'es2022' },
   server: {
     host: '127.0.0.1',

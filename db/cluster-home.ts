@@ -110,7 +110,8 @@ function readPasswords(folder: string): ClusterHome['passwords'] {
     if (existsSync(path.join(folder, 'data')))
       throw new Error(`${file} is missing; without it nobody can sign in to the database.`);
     const fresh = { admin: randomBytes(24).toString('hex'), owner: randomBytes(24).toString('hex') };
-    writeFileSync(file, JSON.stringify(fresh), { mode: 0o600 });
+    // Flushed: after a power cut the cluster is there, so the passwords must be.
+    writeFileSync(file, JSON.stringify(fresh), { mode: 0o600, flush: true });
     return fresh;
   }
   const value: unknown = JSON.parse(readFileSync(file, 'utf8'));

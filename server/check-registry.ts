@@ -7,7 +7,11 @@ import { checkRegistry, everyGroup, type RegistryReport } from './services/regis
  * group; exit code 1 when anything differs.
  */
 async function main(): Promise<number> {
-  const database = openDatabase(databaseUrl(), (error) => console.error(`connection lost: ${error.message}`), 2);
+  const database = openDatabase(
+    databaseUrl(),
+    (error) => console.error(`connection lost: ${error.message}`),
+    2,
+  );
   try {
     const groups = await everyGroup(database);
     if (groups.length === 0) console.log('No groups yet: nothing to check.');
@@ -25,12 +29,14 @@ async function main(): Promise<number> {
 
 /** Nothing here signs anybody in, so a missing session secret is no reason to stop. */
 function databaseUrl(): string {
-  return readConfig({ IDEM_SESSION_SECRET: 'unused by this command, which signs in nobody', ...process.env }).databaseUrl;
+  return readConfig({ IDEM_SESSION_SECRET: 'unused by this command, which signs in nobody', ...process.env })
+    .databaseUrl;
 }
 
 function print(report: RegistryReport): void {
   const sizes = `${report.objects} objects (${report.liveObjects} live), ${report.verdictsInForce} verdicts in force, ${report.conflicts} conflicts`;
-  const result = report.differenceCount === 0 ? 'the same as rebuilt' : `${report.differenceCount} DIFFERENCES`;
+  const result =
+    report.differenceCount === 0 ? 'the same as rebuilt' : `${report.differenceCount} DIFFERENCES`;
   console.log(`${report.group}: ${sizes}: ${result}`);
   for (const difference of report.differences) console.log(`  ${difference}`);
   const hidden = report.differenceCount - report.differences.length;

@@ -5,6 +5,9 @@ import { readConfig, type Config } from './config';
 import type { Context } from './context';
 import { openJobFeed } from './services/job-feed';
 
+/** A little less than the launcher waits before it kills. */
+const STOP_LIMIT_MS = 9500;
+
 /** Opens what a process works with, from a configuration. */
 export function openContext(config: Config, poolSize: number): Context {
   const log = pino({ level: config.logLevel });
@@ -29,6 +32,8 @@ export function onShutdown(context: Context, stop: () => Promise<void>): void {
     if (stopping) return;
     stopping = true;
     context.log.info({ why }, 'stopping');
+    // A stop that hangs (because the database is gone, say) must not leave an orphan.
+    setTimeout(() => process.exit(1), STOP_LIMIT_MS).unref();
     stop().then(
       () => process.exit(0),
       (error: unknown) => {

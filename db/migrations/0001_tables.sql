@@ -39,12 +39,13 @@ CREATE TABLE "catalogue_revision" (
 );
 --> statement-breakpoint
 CREATE TABLE "entry" (
-	"id" bigint PRIMARY KEY NOT NULL,
+	"id" bigint NOT NULL,
 	"group_id" integer NOT NULL,
 	"catalogue_id" integer NOT NULL,
 	"key" text NOT NULL,
+	CONSTRAINT "entry_id_catalogue_id_pk" PRIMARY KEY("id","catalogue_id"),
 	CONSTRAINT "entry_key_unique" UNIQUE("catalogue_id","key")
-);
+) PARTITION BY LIST ("catalogue_id");
 --> statement-breakpoint
 CREATE TABLE "set_aside_row" (
 	"group_id" integer NOT NULL,

@@ -52,8 +52,8 @@ CREATE TRIGGER verdict_append_only BEFORE UPDATE OR DELETE ON verdict FOR EACH S
 --> statement-breakpoint
 CREATE TRIGGER audit_event_append_only BEFORE UPDATE OR DELETE ON audit_event FOR EACH STATEMENT EXECUTE FUNCTION refuse_change();
 --> statement-breakpoint
--- Sources and candidates are loaded by COPY, which row-level security does not allow. So a load goes into a
--- table of its own, into which the application may only insert and whose check constraint fixes the group;
+-- Sources, entries and candidates are loaded in bulk: COPY is not allowed under row-level security, and indexes are
+-- built faster than they are kept up row by row. So a load goes into a table of its own, into which the application may only insert and whose check constraint fixes the group;
 -- attaching makes it a partition, readable only through the parent and so under the parent's policy.
 CREATE SCHEMA bulk;
 --> statement-breakpoint
@@ -67,6 +67,9 @@ BEGIN
   IF parent = 'source' THEN
     part_key := 'revision_id';
     known := EXISTS (SELECT 1 FROM public.catalogue_revision WHERE id = part AND group_id = public.current_group());
+  ELSIF parent = 'entry' THEN
+    part_key := 'catalogue_id';
+    known := EXISTS (SELECT 1 FROM public.catalogue WHERE id = part AND group_id = public.current_group());
   ELSIF parent = 'candidate' THEN
     part_key := 'run_id';
     known := EXISTS (SELECT 1 FROM public.match_run WHERE id = part AND group_id = public.current_group());
@@ -86,7 +89,7 @@ CREATE FUNCTION attach_partition(parent text, part integer) RETURNS void
 DECLARE
   part_name text := parent || '_' || part;
 BEGIN
-  IF parent NOT IN ('source', 'candidate') THEN
+  IF parent NOT IN ('source', 'entry', 'candidate') THEN
     RAISE EXCEPTION 'no partitions of %', parent USING ERRCODE = '42501';
   END IF;
   EXECUTE format('REVOKE INSERT ON bulk.%I FROM idem_app', part_name);

@@ -86,17 +86,21 @@ export const entryIds = pgSequence('entry_id_seq', { startWith: 1, increment: 1 
 /**
  * What a source is across revisions: (catalogue, its own key). Verdicts and objects hold on to entries.
  * No foreign keys on the bulk tables (entry, source, candidate): they are written only by set-based jobs
- * inside one transaction, and a check per row would cost more than the load.
+ * inside one transaction, and a check per row would cost more than the load. Ids are unique over all partitions, because
+ * they come from one sequence.
  */
 export const entry = pgTable(
   'entry',
   {
-    id: bigint('id', { mode: 'number' }).primaryKey(),
+    id: bigint('id', { mode: 'number' }).notNull(),
     groupId: integer('group_id').notNull(),
     catalogueId: integer('catalogue_id').notNull(),
     key: text('key').notNull(),
   },
-  (t) => [unique('entry_key_unique').on(t.catalogueId, t.key)],
+  (t) => [
+    primaryKey({ columns: [t.id, t.catalogueId] }),
+    unique('entry_key_unique').on(t.catalogueId, t.key),
+  ],
 );
 
 /** One row of a revision. */

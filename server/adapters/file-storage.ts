@@ -10,7 +10,8 @@ import type { Readable, Writable } from 'node:stream';
 export interface FileStorage {
   /** Opens a writable stream; the bytes appear under the key only after `commit`. */
   create(key: string): Promise<{ stream: Writable; commit(): Promise<void>; abandon(): Promise<void> }>;
-  open(key: string): Readable;
+  /** `bytesRead` tells how far a reader has come. */
+  open(key: string): Readable & { readonly bytesRead: number };
   read(key: string): Promise<Buffer>;
   write(key: string, bytes: Uint8Array): Promise<void>;
   exists(key: string): Promise<boolean>;

@@ -55,7 +55,8 @@ export function coneJoin(
   for (const chunk of coneJoinChunks(a, b, radiusArcsec, options)) {
     if (chunk.pairs.a.length > 0) parts.push(chunk.pairs);
     options.onProgress?.(chunk.doneRows, chunk.totalRows);
-    if (options.shouldStop?.()) throw new JoinStopped(`stopped after ${chunk.doneRows} of ${chunk.totalRows} rows`);
+    if (options.shouldStop?.())
+      throw new JoinStopped(`stopped after ${chunk.doneRows} of ${chunk.totalRows} rows`);
   }
   return concatPairs(parts);
 }
@@ -64,7 +65,11 @@ export function coneJoin(
  * The pairs of a catalogue with itself, each once with a < b, no row with itself.
  * The limit counts both directions and the rows themselves.
  */
-export function coneSelfJoin(rows: PositionColumns, radiusArcsec: number, options: JoinOptions = {}): PairColumns {
+export function coneSelfJoin(
+  rows: PositionColumns,
+  radiusArcsec: number,
+  options: JoinOptions = {},
+): PairColumns {
   const { a, b, sepArcsec } = coneJoin(rows, rows, radiusArcsec, options);
   const kept = createPairBuffer(a.length);
   for (let pair = 0; pair < a.length; pair += 1) {

@@ -10,10 +10,10 @@ import type { PositionColumns } from './positions';
 export const RECORD_SIZE = 3;
 
 /** Rows of A and B together in a bucket: 32k records and their cells fit into a second-level cache. */
-const ROWS_PER_BUCKET = 4_096;
+const ROWS_PER_BUCKET = 16_384;
 /** Bin numbers are kept in 16 bits; the last value means "in no bin". */
 const NO_BIN = 0xffff;
-const MAX_BINS = NO_BIN;
+const MAX_BINS = 8_192;
 /** Lower buckets would copy a large share of B. */
 const MIN_HEIGHT_IN_REACHES = 8;
 
@@ -40,7 +40,11 @@ interface BinnedRows {
 }
 
 /** Sorts both catalogues into buckets. Rows of B that no row of A can be near are left out. */
-export function bucketsByDeclination(a: PositionColumns, b: PositionColumns, radius: JoinRadius): JoinBuckets {
+export function bucketsByDeclination(
+  a: PositionColumns,
+  b: PositionColumns,
+  radius: JoinRadius,
+): JoinBuckets {
   const bins = decBins(a.decDeg, b.decDeg.length);
   // Whole bins are copied into neighbouring buckets; one bin more than the radius allows for rounding.
   const reach = Math.ceil(radius.paddedDeg * bins.perDeg) + 1;

@@ -76,7 +76,8 @@ export function cellOf(grid: JoinGrid, ra: number): number {
   if (place <= 0) return 0;
   if (place >= SECTORS) return grid.cells - 1;
   const sector = place | 0;
-  const cell = (grid.firstCell[sector] as number) + (((place - sector) * (grid.cellsOfSector[sector] as number)) | 0);
+  const cell =
+    (grid.firstCell[sector] as number) + (((place - sector) * (grid.cellsOfSector[sector] as number)) | 0);
   return cell < grid.cells ? cell : grid.cells - 1;
 }
 
@@ -93,7 +94,7 @@ export function fillJoinGrid(
   const rows = to - from;
   const occupied = countSectors(grid, bRecords, from, to);
   shapeZones(grid, occupied, rows, aDecMin, aDecMax, radius);
-  shareCells(grid, Math.ceil(rows / grid.zones), rows);
+  shareCells(grid, Math.ceil((2 * rows) / grid.zones), rows);
   makeRoom(grid, rows);
   countCells(grid, bRecords, from, to, radius.paddedDeg);
   placeRecords(grid, bRecords, from, to);

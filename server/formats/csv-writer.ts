@@ -2,7 +2,8 @@ const NEEDS_QUOTES = /[",\r\n]/;
 /** A spreadsheet runs what begins so, also after blanks; the full-width signs work in some of them. */
 const FORMULA = /^(?:[\t\r]|\s*[=+\-@＝＋－＠])/;
 /** A number, or an angle in up to three fields: nothing that runs, and its sign must stay where it is. */
-const SIGNED_VALUE = /^\s*[+-]\d+(?:[ :]\d{1,2}){0,2}(?:\.\d*)?(?:[eE][+-]?\d+)?\s*$|^\s*[+-]\.\d+(?:[eE][+-]?\d+)?\s*$/;
+const SIGNED_VALUE =
+  /^\s*[+-]\d+(?:[ :]\d{1,2}){0,2}(?:\.\d*)?(?:[eE][+-]?\d+)?\s*$|^\s*[+-]\.\d+(?:[eE][+-]?\d+)?\s*$/;
 const DASHES = /^-+$/;
 
 /**

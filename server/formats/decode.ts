@@ -43,11 +43,13 @@ export class TextReader {
   }
 
   private decode(bytes: Buffer, line: number): string {
-    if (isAscii(bytes)) return bytes.latin1Slice();
+    if (isAscii(bytes)) return bytes.toString('latin1');
     if (this.encoding === 'latin1') {
-      return bytes.latin1Slice().replace(HIGH_CONTROLS, (char) => WINDOWS_1252.charAt(char.charCodeAt(0) - 0x80));
+      return bytes
+        .toString('latin1')
+        .replace(HIGH_CONTROLS, (char) => WINDOWS_1252.charAt(char.charCodeAt(0) - 0x80));
     }
-    if (isUtf8(bytes)) return bytes.utf8Slice();
+    if (isUtf8(bytes)) return bytes.toString('utf8');
     const badLine = line + lineBreaksBefore(bytes, badLineStart(bytes));
     throw new UnreadableFile(
       'file-encoding',

@@ -51,7 +51,8 @@ export async function* unpackedChunks(
 
 function refuseBomb(unpackedBytes: number, packedBytes: number, maxUnpackedBytes: number): void {
   if (unpackedBytes > maxUnpackedBytes) {
-    const limit = maxUnpackedBytes >= MIB ? `${Math.floor(maxUnpackedBytes / MIB)} MiB` : `${maxUnpackedBytes} bytes`;
+    const limit =
+      maxUnpackedBytes >= MIB ? `${Math.floor(maxUnpackedBytes / MIB)} MiB` : `${maxUnpackedBytes} bytes`;
     throw new UnreadableFile(
       'file-gzip-bomb',
       `The gzip file unpacks to more than the limit of ${limit}.`,
@@ -74,5 +75,7 @@ function bytesOf(chunk: unknown): Buffer {
 }
 
 function isZlibError(error: unknown): boolean {
-  return error instanceof Error && 'code' in error && typeof error.code === 'string' && error.code.startsWith('Z_');
+  return (
+    error instanceof Error && 'code' in error && typeof error.code === 'string' && error.code.startsWith('Z_')
+  );
 }

@@ -1,4 +1,3 @@
-import { sessionState } from '../../shared/schemas/session';
 import type { DemoOutcome } from './demo';
 import { say } from './say';
 
@@ -10,18 +9,20 @@ export function browserUrl(host: string, port: number): string {
 
 /** Says where the product is and how to get in. */
 export async function announce(url: string, webUrl: string, signIns: DemoOutcome['signIns']): Promise<void> {
-  say(`\nIdem is ready: ${url}`);
+  const lines = [`\nIdem is ready: ${url}`];
   if (signIns.length > 0) {
-    say('Demo sign-ins:');
-    for (const { role, email, password } of signIns)
-      say(`  ${role.padEnd(12)} ${email.padEnd(30)} ${password}`);
+    lines.push('Demo sign-ins:');
+    for (const { role, email, password } of signIns) {
+      lines.push(`  ${role.padEnd(12)} ${email.padEnd(30)} ${password}`);
+    }
   } else if (await needsSetup(webUrl)) {
-    say('Nobody has an account yet: the first person to open it makes the owner account.');
+    lines.push('Nobody has an account yet: the first person to open it makes the owner account.');
   }
-  say('Ctrl-C stops it.');
+  say([...lines, 'Ctrl-C stops it.'].join('\n'));
 }
 
 async function needsSetup(webUrl: string): Promise<boolean> {
   const answer = await fetch(`${webUrl}/api/session`);
-  return answer.ok && sessionState.parse(await answer.json()).needsSetup;
+  const state: unknown = await answer.json();
+  return typeof state === 'object' && state !== null && 'needsSetup' in state && state.needsSetup === true;
 }

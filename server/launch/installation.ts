@@ -2,15 +2,17 @@ import { randomBytes } from 'node:crypto';
 import { chmodSync, existsSync, mkdirSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { startCluster, type Cluster } from '../../db/cluster';
-import { takeLock, type ProcessLock } from '../../db/cluster-lock';
+import { takeLock, type LockHolder, type ProcessLock } from '../../db/cluster-lock';
 import { endProcesses, environmentOf, processIds } from '../../db/cluster-processes';
-import { migrate } from '../../db/migrate';
 import type { Life } from './lifecycle';
 import { PROJECT_ROOT } from './project';
 import { say, StartProblem } from './say';
 
 const DATABASE = 'idem';
-const LEFTOVER_GRACE_MS = 5000;
+const LEFTOVER_GRACE_MS = 1000;
+/** Written into the lock at the end; a new start waits that long for it to be given back. */
+const STOPPING = 'stopping';
+const STOPPING_LIMIT_MS = 30_000;
 /** Every program of an installation carries this in its environment, with the data folder as value. */
 const MARK = 'IDEM_INSTALLATION';
 
@@ -27,17 +29,24 @@ export async function claimDataDir(life: Life, dataDir: string): Promise<Process
   } catch (error) {
     throw notWritable(dataDir, error);
   }
-  const claim = claimLock(dataDir);
-  if (!claim.taken) {
-    const where = claim.holder.note === '' ? 'and is still starting' : `at ${claim.holder.note}`;
-    throw new StartProblem(
-      `Idem already runs ${where} (process ${claim.holder.pid}, data in ${dataDir}). ` +
-        `Stop it first: Ctrl-C in its terminal, or kill ${claim.holder.pid}.`,
-    );
+  const deadline = performance.now() + STOPPING_LIMIT_MS;
+  let claim = claimLock(dataDir);
+  while (!claim.taken && claim.holder.note === STOPPING && performance.now() < deadline) {
+    await new Promise((resolve) => setTimeout(resolve, 50));
+    claim = claimLock(dataDir);
   }
-  life.defer(() => claim.lock.release());
+  if (!claim.taken) throw new StartProblem(alreadyRuns(claim.holder, dataDir));
+  const { lock } = claim;
+  life.defer(() => lock.release());
+  life.signal.addEventListener('abort', () => lock.write(STOPPING));
   await endLeftovers(dataDir);
-  return claim.lock;
+  return lock;
+}
+
+function alreadyRuns({ pid, note }: LockHolder, dataDir: string): string {
+  const states: Record<string, string> = { '': 'and is still starting', [STOPPING]: 'but is stopping' };
+  const where = states[note] ?? `at ${note}`;
+  return `Idem already runs ${where} (process ${pid}, data in ${dataDir}). Stop it first: Ctrl-C in its terminal, or kill ${pid}.`;
 }
 
 function claimLock(dataDir: string) {
@@ -67,8 +76,11 @@ async function endLeftovers(dataDir: string): Promise<void> {
 
 /** Brings the database up (unless IDEM_DATABASE_URL names one) and to the present schema; returns the application's URL. */
 export async function openDatabaseOf(life: Life, dataDir: string, env: NodeJS.ProcessEnv): Promise<string> {
+  // The migration code takes about as long to load as the database to start.
+  const loading = import('../../db/migrate');
   const ownerUrl = env.IDEM_DATABASE_URL || (await ownCluster(life, dataDir));
   life.signal.throwIfAborted();
+  const { migrate } = await loading;
   const { appUrl } = await migrate(ownerUrl);
   life.signal.throwIfAborted();
   return appUrl;

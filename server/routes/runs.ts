@@ -100,6 +100,7 @@ export const runRoutes: Route[] = [
     params: policyParams,
     answer: jobAccepted,
     status: 202,
-    run: ({ context, actor, params }) => policies.startTakingBack(context, actor, params.run, params.policyId),
+    run: ({ context, actor, params }) =>
+      policies.startTakingBack(context, actor, params.run, params.policyId),
   }),
 ];

@@ -43,7 +43,9 @@ export async function copyCandidates(
   rowAt: (index: number, row: CandidateRow) => void,
   report: (done: number) => Promise<void>,
 ): Promise<void> {
-  const { rows } = await tx.execute<{ part: string }>(sql`select open_partition('candidate', ${place.runId}) as part`);
+  const { rows } = await tx.execute<{ part: string }>(
+    sql`select open_partition('candidate', ${place.runId}) as part`,
+  );
   const { part } = found(rows[0], 'partition');
   await pipeline(
     Readable.from(encodedBatches(place, count, rowAt, report)),

@@ -44,7 +44,8 @@ export async function filterConditions(
   if (filter.kind === 'crowded') conditions.push(sql`not ${isClear}`);
   if (filter.minSepArcsec !== undefined) conditions.push(sql`c.sep_arcsec >= ${filter.minSepArcsec}::float8`);
   if (filter.maxSepArcsec !== undefined) conditions.push(sql`c.sep_arcsec <= ${filter.maxSepArcsec}::float8`);
-  if (filter.pair !== undefined && filter.pair !== '') conditions.push(await pairCondition(tx, actor, run, filter.pair));
+  if (filter.pair !== undefined && filter.pair !== '')
+    conditions.push(await pairCondition(tx, actor, run, filter.pair));
   return conditions;
 }
 

@@ -5,7 +5,13 @@ import type { Context, GroupActor } from '../context';
 import { partitionEntries } from '../engine/partition';
 import { found } from '../errors';
 import { liveNumbers, type Refused } from './identity';
-import { verdictIdsByPair, selectConnected, selectEdges, selectKeptApart, type IdentityEdges } from './identity-edges';
+import {
+  verdictIdsByPair,
+  selectConnected,
+  selectEdges,
+  selectKeptApart,
+  type IdentityEdges,
+} from './identity-edges';
 import { bigintArray } from './verdict-log';
 
 const MAX_LISTED = 200;
@@ -20,14 +26,21 @@ export async function listConflicts(
     actor,
     async (tx) => {
       const { refused, edges } = await refusedAround(tx, actor, await selectKeptApart(tx, actor));
-      return { items: await describeConflicts(tx, actor, refused.slice(0, MAX_LISTED), edges), total: refused.length };
+      return {
+        items: await describeConflicts(tx, actor, refused.slice(0, MAX_LISTED), edges),
+        total: refused.length,
+      };
     },
     'repeatable read',
   );
 }
 
 /** Number of conflicts among entries and what is connected with them; over the whole group when null. */
-export async function countConflicts(tx: Tx, actor: GroupActor, entries: readonly number[] | null): Promise<number> {
+export async function countConflicts(
+  tx: Tx,
+  actor: GroupActor,
+  entries: readonly number[] | null,
+): Promise<number> {
   const { refused } = await refusedAround(tx, actor, entries ?? (await selectKeptApart(tx, actor)));
   return refused.length;
 }
@@ -49,7 +62,9 @@ async function describeConflicts(
   refused: readonly Refused[],
   edges: IdentityEdges,
 ): Promise<Conflict[]> {
-  const entries = [...new Set(refused.flatMap(({ edge, forbidden, chain }) => [...edge, ...forbidden, ...chain]))];
+  const entries = [
+    ...new Set(refused.flatMap(({ edge, forbidden, chain }) => [...edge, ...forbidden, ...chain])),
+  ];
   const links = await selectLinks(tx, actor, entries);
   const numbers = await liveNumbers(tx, actor, entries);
   const numberOf = new Map(entries.map((entry, i) => [entry, numbers[i] ?? null]));
@@ -63,12 +78,18 @@ async function describeConflicts(
     forbiddenB: linkOf(forbidden[1]),
     differentVerdictId: verdictOf(forbidden),
     chain: chain.map(linkOf),
-    objectNumbers: [...new Set(edge.map((entry) => found(numberOf.get(entry), 'object')))].sort((x, y) => x - y),
+    objectNumbers: [...new Set(edge.map((entry) => found(numberOf.get(entry), 'object')))].sort(
+      (x, y) => x - y,
+    ),
   }));
 }
 
 /** What entries are called in the newest revision that has them, and in which catalogue they stand. */
-async function selectLinks(tx: Tx, actor: GroupActor, entries: readonly number[]): Promise<Map<number, Link>> {
+async function selectLinks(
+  tx: Tx,
+  actor: GroupActor,
+  entries: readonly number[],
+): Promise<Map<number, Link>> {
   const { rows } = await tx.execute<Link & { [key: string]: unknown }>(sql`
     select distinct on (s.entry_id) s.entry_id as "entryId", c.label as catalogue, s.designation
     from source s

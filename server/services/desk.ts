@@ -4,7 +4,14 @@ import type { Candidate, DeskTask } from '../../shared/schemas/run';
 import { midpoint } from '../../shared/astro/sphere';
 import type { Context, GroupActor } from '../context';
 import { found } from '../errors';
-import { candidatesWithVerdict, countCandidates, filterConditions, ofRun, selectCandidates, type CandidateFilter } from './candidates';
+import {
+  candidatesWithVerdict,
+  countCandidates,
+  filterConditions,
+  ofRun,
+  selectCandidates,
+  type CandidateFilter,
+} from './candidates';
 import { coneSources } from './near-sources';
 import { runByNumber, runRevisions, type RunRevision, type RunRow } from './run-lookup';
 import { bigintArray, verdictsOnPair } from './verdict-log';
@@ -28,7 +35,11 @@ export async function deskTask(
   return inTransaction(context.database, actor, async (tx) => {
     const run = await runByNumber(tx, actor, number);
     const whole = ofRun(actor, run);
-    const [row] = await selectCandidates(tx, run, { where: [whole, sql`c.seq = ${seq}`], descending: false, limit: 1 });
+    const [row] = await selectCandidates(tx, run, {
+      where: [whole, sql`c.seq = ${seq}`],
+      descending: false,
+      limit: 1,
+    });
     const candidate = found(row, `candidate ${seq}`);
     const revisions = await runRevisions(tx, actor, run);
     const pair = [candidate.a.entryId, candidate.b.entryId] as const;
@@ -70,8 +81,17 @@ async function fieldAround(
 ): Promise<Pick<DeskTask, 'field' | 'fieldRadiusArcsec'>> {
   const radiusArcsec = Math.min(MAX_FIELD_ARCSEC, Math.max(MIN_FIELD_ARCSEC, FIELD_RADII * run.radiusArcsec));
   const centre = midpoint(a, b) ?? a;
-  const sources = await coneSources(context, tx, actor, run.revisionIds, { ...centre, radiusArcsec }, MAX_FIELD_SOURCES);
-  const field = sources.map(({ revisionId: _revisionId, epochYear: _epochYear, sepArcsec: _sepArcsec, ...side }) => side);
+  const sources = await coneSources(
+    context,
+    tx,
+    actor,
+    run.revisionIds,
+    { ...centre, radiusArcsec },
+    MAX_FIELD_SOURCES,
+  );
+  const field = sources.map(
+    ({ revisionId: _revisionId, epochYear: _epochYear, sepArcsec: _sepArcsec, ...side }) => side,
+  );
   return { field, fieldRadiusArcsec: radiusArcsec };
 }
 

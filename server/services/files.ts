@@ -8,8 +8,9 @@ import type { UploadedFile } from '../../shared/schemas/file';
 import type { ColumnMapping, FileInspection, MappingPreview, TextDialect } from '../../shared/schemas/mapping';
 import type { Context, GroupActor } from '../context';
 import { found, refuse } from '../errors';
-import { inspectTextTable, UnreadableFile } from '../formats/inspect';
+import { inspectTextTable } from '../formats/inspect';
 import { previewMapping } from '../formats/preview';
+import { UnreadableFile } from '../formats/unreadable-file';
 import { recordEvent } from './audit';
 
 const MIB = 1024 * 1024;

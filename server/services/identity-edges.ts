@@ -34,7 +34,11 @@ export function verdictIdsByPair(edges: IdentityEdges): (pair: Pair) => number {
  * The given entries and all that 'same' verdicts in force connect with them, ascending. A pass over this closure
  * gives the same answer as one over the whole group: no 'same' verdict leaves it.
  */
-export async function selectConnected(tx: Tx, actor: GroupActor, entries: readonly number[]): Promise<number[]> {
+export async function selectConnected(
+  tx: Tx,
+  actor: GroupActor,
+  entries: readonly number[],
+): Promise<number[]> {
   return selectReachable(tx, actor, entries, null);
 }
 
@@ -84,7 +88,11 @@ export async function selectKeptApart(tx: Tx, actor: GroupActor): Promise<number
 }
 
 /** The deciding verdicts in force among a closure of entries. */
-export async function selectEdges(tx: Tx, actor: GroupActor, entries: readonly number[]): Promise<IdentityEdges> {
+export async function selectEdges(
+  tx: Tx,
+  actor: GroupActor,
+  entries: readonly number[],
+): Promise<IdentityEdges> {
   const edges: IdentityEdges = { same: [], different: [], sameIds: [], differentIds: [] };
   if (entries.length === 0) return edges;
   const { rows } = await tx.execute<{ a: number; b: number; id: number; value: 'same' | 'different' }>(sql`

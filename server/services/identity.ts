@@ -27,7 +27,11 @@ export interface IdentityOutcome extends Written {
  * The partition runs inside the transaction although engine work otherwise does not: it must see exactly the
  * verdicts that the registry lock protects.
  */
-export async function applyIdentity(tx: Tx, actor: GroupActor, scope: IdentityScope): Promise<IdentityOutcome> {
+export async function applyIdentity(
+  tx: Tx,
+  actor: GroupActor,
+  scope: IdentityScope,
+): Promise<IdentityOutcome> {
   await lockRegistry(tx, actor);
   const entries =
     scope === 'group' ? await selectAllInvolved(tx, actor) : await selectConnected(tx, actor, scope.entries);

@@ -127,8 +127,11 @@ export interface JobRun {
   id: string;
   actor: GroupActor;
   payload: Record<string, unknown>;
-  /** Reports progress (written at most a few times a second) and throws JobCancelled when a person asked to stop. */
-  report(done: number, total: number | null, message: string): Promise<void>;
+  /**
+   * Reports progress and throws JobCancelled when a person asked to stop. Written at most a few times a second,
+   * unless it is to be written 'now', as at the beginning of a new stage.
+   */
+  report(done: number, total: number | null, message: string, when?: 'soon' | 'now'): Promise<void>;
   /** Puts the final count and sentence; written when the job is done. */
   finish(done: number, message: string): void;
 }
@@ -187,9 +190,9 @@ export async function runJob(
     id: row.id,
     actor,
     payload: row.payload,
-    async report(done, total, message) {
+    async report(done, total, message, when = 'soon') {
       closing = { done, message };
-      if (Date.now() - lastWrite < PROGRESS_EVERY_MS) return;
+      if (when === 'soon' && Date.now() - lastWrite < PROGRESS_EVERY_MS) return;
       lastWrite = Date.now();
       if (await writeProgress(context, scope, row.id, { done, total, message })) throw new JobCancelled();
     },

@@ -22,7 +22,12 @@ function fitsRule(rule: PolicyRule): SQL {
 }
 
 /** Which candidates (`c`, `f`) a rule decides: it fits, nobody has said anything, and nothing forbids it. */
-export function decidedByRule(actor: GroupActor, run: RunRow, rule: PolicyRule, conflicting: readonly number[]): SQL {
+export function decidedByRule(
+  actor: GroupActor,
+  run: RunRow,
+  rule: PolicyRule,
+  conflicting: readonly number[],
+): SQL {
   return sql`${ofRun(actor, run)} and ${fitsRule(rule)} and f.verdict_id is null
     and c.seq <> all(${bigintArray(conflicting)})`;
 }
@@ -94,7 +99,12 @@ export async function startPolicy(
       .returning({ id: appliedPolicy.id });
     const policyId = found(row, 'policy').id;
     await recordEvent(tx, actor, 'policy started', `cross-match ${number}`, { policyId, rule });
-    return { jobId: await enqueuePolicy(tx, actor, run, `Policy on cross-match ${number}`, { act: 'apply', policyId }) };
+    return {
+      jobId: await enqueuePolicy(tx, actor, run, `Policy on cross-match ${number}`, {
+        act: 'apply',
+        policyId,
+      }),
+    };
   });
 }
 
@@ -110,7 +120,9 @@ export async function startTakingBack(
     const [row] = await tx
       .select()
       .from(appliedPolicy)
-      .where(and(eq(appliedPolicy.id, policyId), eq(appliedPolicy.runId, run.id), gt(appliedPolicy.verdicts, 0)))
+      .where(
+        and(eq(appliedPolicy.id, policyId), eq(appliedPolicy.runId, run.id), gt(appliedPolicy.verdicts, 0)),
+      )
       .for('update');
     if (found(row, 'policy').takenBackAt !== null) {
       refuse('already-taken-back', 'The verdicts of this policy were taken back before.');
@@ -136,17 +148,28 @@ async function requireDecidable(tx: Tx, actor: GroupActor, number: number): Prom
   const run = await runByNumber(tx, actor, number);
   if (run.pairs.length === 0) refuse('not-ready', `Cross-match ${number} has no candidates yet.`);
   const waiting = (await runRevisions(tx, actor, run)).find(({ registered }) => !registered);
-  if (waiting !== undefined) refuse('not-ready', `The objects of ${waiting.label} are still being registered.`);
+  if (waiting !== undefined)
+    refuse('not-ready', `The objects of ${waiting.label} are still being registered.`);
   return run;
 }
 
 /** The policies that gave verdicts on a run, the newest first. */
-export async function appliedPolicies(tx: Tx, actor: GroupActor, run: RunRow): Promise<RunDetail['policies']> {
+export async function appliedPolicies(
+  tx: Tx,
+  actor: GroupActor,
+  run: RunRow,
+): Promise<RunDetail['policies']> {
   const rows = await tx
     .select({ policy: appliedPolicy, by: person.name })
     .from(appliedPolicy)
     .innerJoin(person, eq(person.id, appliedPolicy.createdBy))
-    .where(and(eq(appliedPolicy.groupId, actor.groupId), eq(appliedPolicy.runId, run.id), gt(appliedPolicy.verdicts, 0)))
+    .where(
+      and(
+        eq(appliedPolicy.groupId, actor.groupId),
+        eq(appliedPolicy.runId, run.id),
+        gt(appliedPolicy.verdicts, 0),
+      ),
+    )
     .orderBy(desc(appliedPolicy.id));
   return rows.map(({ policy, by }) => ({
     id: policy.id,

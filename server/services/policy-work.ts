@@ -31,13 +31,19 @@ export async function workOnPolicy(context: Context, run: JobRun): Promise<void>
       .for('update');
     const policy = found(row, 'policy');
     const matchRun = await runById(tx, run.actor, policy.runId);
-    return act === 'apply' ? applyPolicy(tx, run, policy, matchRun) : withdrawPolicy(tx, run, policy, matchRun);
+    return act === 'apply'
+      ? applyPolicy(tx, run, policy, matchRun)
+      : withdrawPolicy(tx, run, policy, matchRun);
   });
   run.finish(done, message);
 }
 
 /** A policy that was not applied leaves no trace; one that was not taken back stays as it is. */
-export async function unwindPolicy(_context: Context, tx: Tx, run: Pick<JobRun, 'actor' | 'payload'>): Promise<null> {
+export async function unwindPolicy(
+  _context: Context,
+  tx: Tx,
+  run: Pick<JobRun, 'actor' | 'payload'>,
+): Promise<null> {
   const { act, policyId } = policyPayload.parse(run.payload);
   if (act === 'take back') return null;
   await tx
@@ -58,7 +64,8 @@ interface Ending {
 }
 
 async function applyPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: RunRow): Promise<Ending> {
-  if (policy.verdicts > 0) return { done: policy.verdicts, message: `${policy.verdicts} automatic verdicts.` };
+  if (policy.verdicts > 0)
+    return { done: policy.verdicts, message: `${policy.verdicts} automatic verdicts.` };
   const { actor } = run;
   await run.report(0, null, 'Looking for conflicts');
   const conflicting = await conflictingCandidates(tx, actor, matchRun, policy.rule);
@@ -80,7 +87,10 @@ async function applyPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: Run
     verdicts,
     objectsChanged: changed,
   });
-  return { done: verdicts, message: `${verdicts} automatic verdicts; ${conflicting.length} left for people as conflicts.` };
+  return {
+    done: verdicts,
+    message: `${verdicts} automatic verdicts; ${conflicting.length} left for people as conflicts.`,
+  };
 }
 
 async function withdrawPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: RunRow): Promise<Ending> {
@@ -88,7 +98,10 @@ async function withdrawPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: 
   const { actor } = run;
   await run.report(0, policy.verdicts, 'Taking verdicts back');
   const taken = await takeBackWhere(tx, actor, sql`v.policy_id = ${policy.id}`);
-  await tx.update(appliedPolicy).set({ takenBackAt: sql`now()` }).where(eq(appliedPolicy.id, policy.id));
+  await tx
+    .update(appliedPolicy)
+    .set({ takenBackAt: sql`now()` })
+    .where(eq(appliedPolicy.id, policy.id));
   await run.report(taken, policy.verdicts, 'Separating objects');
   const { changed } = await applyIdentity(tx, actor, 'group');
   await recordEvent(tx, actor, 'policy taken back', `cross-match ${matchRun.number}`, {

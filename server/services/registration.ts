@@ -9,7 +9,7 @@ import { nameKey } from '../../shared/astro/designations';
 import type { ColumnMapping } from '../../shared/schemas/mapping';
 import type { Context, GroupActor } from '../context';
 import { copyTextEscape, copyTextUnescape } from '../formats/copy-text';
-import { namesInCells } from '../formats/understand';
+import { namesInCells } from '../formats/understand-names';
 
 const CHUNK_CHARACTERS = 65_536;
 

@@ -103,8 +103,11 @@ function compareInForce({ inForce }: Rebuilt, stored: readonly StoredInForce[]):
     const rebuilt = left.get(key);
     left.delete(key);
     if (rebuilt?.id === verdictId && rebuilt.value === value) continue;
-    const should = rebuilt === undefined ? 'nothing is in force' : `verdict ${rebuilt.id} (${rebuilt.value}) is`;
-    differences.push(`pair ${entryA}, ${entryB}: stored verdict ${verdictId} (${value}), by the log ${should}`);
+    const should =
+      rebuilt === undefined ? 'nothing is in force' : `verdict ${rebuilt.id} (${rebuilt.value}) is`;
+    differences.push(
+      `pair ${entryA}, ${entryB}: stored verdict ${verdictId} (${value}), by the log ${should}`,
+    );
   }
   for (const { entryA, entryB, id } of left.values()) {
     differences.push(`pair ${entryA}, ${entryB}: verdict ${id} is in force by the log, but not stored so`);
@@ -125,7 +128,9 @@ function compareObjects({ componentOf }: Rebuilt, objects: readonly StoredObject
     const mergedInto = live === object ? null : live.id;
     const entries = live === object ? (component?.size ?? 1) : 0;
     if (object.mergedInto !== mergedInto) {
-      differences.push(`object ${object.number}: ${forwards(object.mergedInto)}, by the log ${forwards(mergedInto)}`);
+      differences.push(
+        `object ${object.number}: ${forwards(object.mergedInto)}, by the log ${forwards(mergedInto)}`,
+      );
     } else if (object.entries !== entries) {
       differences.push(`object ${object.number}: ${object.entries} entries, by the log ${entries}`);
     }

@@ -1,7 +1,11 @@
 import { sql } from 'drizzle-orm';
 import type { z } from 'zod';
 import type { Tx } from '../../db/client';
-import type { mergeObjects as mergeInput, registryChange, splitObject as splitInput } from '../../shared/schemas/object';
+import type {
+  mergeObjects as mergeInput,
+  registryChange,
+  splitObject as splitInput,
+} from '../../shared/schemas/object';
 import type { Context, GroupActor } from '../context';
 import { partitionEntries } from '../engine/partition';
 import { refuse } from '../errors';
@@ -27,7 +31,11 @@ export async function mergeObjects(
     if (first === undefined || others.length === 0) {
       refuse('nothing-to-decide', 'These numbers are one object already.');
     }
-    await appendVerdicts(tx, actor, others.map((other) => byHand([first, other], 'same', input.remark)));
+    await appendVerdicts(
+      tx,
+      actor,
+      others.map((other) => byHand([first, other], 'same', input.remark)),
+    );
     return settle(tx, actor, [first, ...others], { act: 'merged by hand', remark: input.remark });
   });
 }
@@ -59,8 +67,14 @@ export async function splitObject(
     await takeBack(tx, actor, crossing.map(verdictIdsByPair(edges)));
     const spoken = [
       ...crossing.map((pair) => byHand(pair, 'different', input.remark)),
-      ...missingLinks(members.filter((entry) => taken.has(entry)), within).map((pair) => byHand(pair, 'same', input.remark)),
-      ...missingLinks(members.filter((entry) => !taken.has(entry)), within).map((pair) => byHand(pair, 'same', input.remark)),
+      ...missingLinks(
+        members.filter((entry) => taken.has(entry)),
+        within,
+      ).map((pair) => byHand(pair, 'same', input.remark)),
+      ...missingLinks(
+        members.filter((entry) => !taken.has(entry)),
+        within,
+      ).map((pair) => byHand(pair, 'same', input.remark)),
     ];
     await appendVerdicts(tx, actor, spoken);
     return settle(tx, actor, members, { act: 'split by hand', remark: input.remark });

@@ -1,7 +1,7 @@
 import { sql } from 'drizzle-orm';
 import { to as copyTo } from 'pg-copy-streams';
 import { inTransaction } from '../../db/client';
-import { coneIndexFromBytes, buildConeIndex, type ConeIndex } from '../engine/cone-index';
+import { buildConeIndex, loadConeIndex, type ConeIndex, type ConeRows } from '../engine/cone-index';
 import type { Context, GroupActor } from '../context';
 
 /** The positions of one revision as plain columns; index i belongs to row_no i + 1. */
@@ -48,7 +48,7 @@ export async function buildRevisionIndex(
   revisionId: number,
 ): Promise<RevisionPositions> {
   const positions = await readPositions(context, actor, revisionId);
-  await context.files.write(conesKey(revisionId), buildConeIndex(positions.raDeg, positions.decDeg).toBytes());
+  await context.files.write(conesKey(revisionId), buildConeIndex(positions).bytes);
   await context.files.write(positionsKey(revisionId), positionsToBytes(positions));
   return positions;
 }
@@ -137,7 +137,7 @@ async function coneIndex(context: Context, actor: GroupActor, revisionId: number
   }
   if (!(await context.files.exists(key))) await buildRevisionIndex(context, actor, revisionId);
   const bytes = await context.files.read(key);
-  const index = coneIndexFromBytes(bytes);
+  const index = loadConeIndex(bytes);
   cached.set(cacheKey, { index, bytes: bytes.byteLength });
   forgetOldest();
   return index;
@@ -164,9 +164,7 @@ export async function rowsInCone(
   const all: NearRow[] = [];
   for (const revisionId of revisionIds) {
     const index = await coneIndex(context, actor, revisionId);
-    for (const hit of index.cone(centre.raDeg, centre.decDeg, centre.radiusArcsec)) {
-      all.push({ revisionId, rowNo: hit.row + 1, sepArcsec: hit.sepArcsec });
-    }
+    collect(all, revisionId, index.cone(centre.raDeg, centre.decDeg, centre.radiusArcsec));
   }
   return nearestFirst(all).slice(0, limit);
 }
@@ -182,11 +180,13 @@ export async function nearestRows(
   const all: NearRow[] = [];
   for (const revisionId of revisionIds) {
     const index = await coneIndex(context, actor, revisionId);
-    for (const hit of index.nearest(place.raDeg, place.decDeg, k, place.maxArcsec)) {
-      all.push({ revisionId, rowNo: hit.row + 1, sepArcsec: hit.sepArcsec });
-    }
+    collect(all, revisionId, index.nearest(place.raDeg, place.decDeg, k, place.maxArcsec));
   }
   return nearestFirst(all).slice(0, k);
+}
+
+function collect(all: NearRow[], revisionId: number, hits: ConeRows): void {
+  hits.rows.forEach((row, i) => all.push({ revisionId, rowNo: row + 1, sepArcsec: hits.sepArcsec[i] ?? Number.NaN }));
 }
 
 function nearestFirst(rows: NearRow[]): NearRow[] {

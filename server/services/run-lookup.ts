@@ -56,8 +56,12 @@ export async function revisionsById(
     })
     .from(catalogueRevision)
     .innerJoin(catalogue, eq(catalogue.id, catalogueRevision.catalogueId))
-    .where(and(eq(catalogueRevision.groupId, actor.groupId), inArray(catalogueRevision.id, [...new Set(ids)])));
-  return new Map(rows.map(({ registeredAt, ...row }) => [row.id, { ...row, registered: registeredAt !== null }]));
+    .where(
+      and(eq(catalogueRevision.groupId, actor.groupId), inArray(catalogueRevision.id, [...new Set(ids)])),
+    );
+  return new Map(
+    rows.map(({ registeredAt, ...row }) => [row.id, { ...row, registered: registeredAt !== null }]),
+  );
 }
 
 /** A run's revisions in the order of its plan. */

@@ -24,7 +24,12 @@ export const SOFTWARE_VERSION = versionOf(
 );
 
 function versionOf(manifest: unknown): string {
-  if (typeof manifest === 'object' && manifest !== null && 'version' in manifest && typeof manifest.version === 'string') {
+  if (
+    typeof manifest === 'object' &&
+    manifest !== null &&
+    'version' in manifest &&
+    typeof manifest.version === 'string'
+  ) {
     return manifest.version;
   }
   throw new Error('package.json states no version');
@@ -105,7 +110,9 @@ async function selectRuns(tx: Tx, actor: GroupActor, number: number | null) {
     .from(matchRun)
     .innerJoin(job, eq(job.id, matchRun.jobId))
     .innerJoin(person, eq(person.id, matchRun.createdBy))
-    .where(and(eq(matchRun.groupId, actor.groupId), number === null ? undefined : eq(matchRun.number, number)))
+    .where(
+      and(eq(matchRun.groupId, actor.groupId), number === null ? undefined : eq(matchRun.number, number)),
+    )
     .orderBy(desc(matchRun.number))
     .limit(MAX_LISTED);
 }
@@ -133,7 +140,11 @@ function summaryOf(row: SelectedRun, revisions: Map<number, RunRevision>): RunSu
 export async function listRuns(context: Context, actor: GroupActor): Promise<RunSummary[]> {
   return inTransaction(context.database, actor, async (tx) => {
     const rows = await selectRuns(tx, actor, null);
-    const revisions = await revisionsById(tx, actor, rows.flatMap((row) => row.run.revisionIds));
+    const revisions = await revisionsById(
+      tx,
+      actor,
+      rows.flatMap((row) => row.run.revisionIds),
+    );
     return rows.map((row) => summaryOf(row, revisions));
   });
 }

@@ -1,9 +1,9 @@
-import type { SetAsideRow } from '../../shared/schemas/mapping';
+import type { SetAsideRow, UnderstoodRow } from '../../shared/schemas/mapping';
 import type { Context } from '../context';
 import { KeyFilter } from '../engine/key-filter';
 import { copyTextEscape } from '../formats/copy-text';
-import { openTable } from '../formats/rows';
-import { compileMapping, type SourceFields } from '../formats/understand';
+import { readRows } from '../formats/rows';
+import { compileMapping } from '../formats/understand';
 import type { ImportedRevision } from './imports';
 import type { JobRun } from './jobs';
 
@@ -12,6 +12,7 @@ const ENTRY_ID_BLOCK = 50_000;
 const CELL_SEPARATOR = '\u001f';
 /** Of so many suspected duplicates the suspicion is checked exactly at the end. */
 const MAX_CHECKED_SUSPECTS = 10_000;
+const MAX_RAW_CHARACTERS = 2000;
 
 export interface ImportCounts {
   rowsRead: number;
@@ -34,25 +35,22 @@ interface Import {
 export async function* sourceLines(input: Import): AsyncGenerator<string> {
   const { context, counts, imported, run } = input;
   const { revision } = imported;
-  const table = openTable(context.files.open(revision.fileId), revision.dialect, {
-    maxUnpackedBytes: context.config.maxUnpackedBytes,
-  });
-  const understand = compileMapping(revision.mapping, revision.columns, revision.dialect);
+  const file = context.files.open(revision.fileId);
+  const rows = readRows(file, revision.dialect, { maxUnpackedBytes: context.config.maxUnpackedBytes });
+  const reader = compileMapping(revision.mapping, revision.columns, revision.dialect);
+  const source = reader.newRow();
   const takeEntryId = entryIdSource(context);
-  const keyOf = uniqueKeys(revision.mapping.keyColumn !== null, counts);
+  const keys = keyGuard(revision.mapping.keyColumn !== null, counts);
   const prefix = `${revision.groupId}\t${revision.id}\t`;
   let chunk = '';
-  for await (const batch of table.batches) {
+  for await (const batch of rows) {
     for (let i = 0; i < batch.lines.length; i += 1) {
-      const line = batch.lines[i] ?? 0;
-      const cells = batch.cells[i] ?? [];
+      const cells = batch.cells[i] ?? null;
+      const raw = batch.raws[i] ?? '';
       counts.rowsRead += 1;
-      const understood = batch.refusals?.get(i) ?? understand(line, cells);
-      const source = 'code' in understood ? understood : keyOf(understood, cells);
-      if ('code' in source) {
-        counts.setAside += 1;
-        counts.firstReason ??= source.message;
-        await input.setAside(source);
+      const refusal = reader.read(cells, raw, batch.lines[i] ?? 0, batch.firstRow + i, source) ?? keys(source, raw);
+      if (refusal !== null || cells === null) {
+        if (refusal !== null) await setAside(input, refusal);
         continue;
       }
       counts.sources += 1;
@@ -63,9 +61,15 @@ export async function* sourceLines(input: Import): AsyncGenerator<string> {
         chunk = '';
       }
     }
-    await run.report(counts.rowsRead, estimateRows(counts.rowsRead, table.bytesRead(), imported.sizeBytes), 'Reading rows');
+    await run.report(counts.rowsRead, estimateRows(counts.rowsRead, file.bytesRead, imported.sizeBytes), 'Reading rows');
   }
   if (chunk !== '') yield chunk;
+}
+
+async function setAside(input: Import, row: SetAsideRow): Promise<void> {
+  input.counts.setAside += 1;
+  input.counts.firstReason ??= row.message;
+  await input.setAside(row);
 }
 
 /** How many rows the file will turn out to have, from the share of its bytes that has been read. */
@@ -94,31 +98,31 @@ function entryIdSource(context: Context) {
  * A row whose own key was there before is set aside. Where the catalogue has no key of its own, a repeated name only
  * gets its line behind it: two rows may well bear one name.
  */
-function uniqueKeys(ownKeys: boolean, counts: ImportCounts) {
+function keyGuard(ownKeys: boolean, counts: ImportCounts) {
   const seen = new KeyFilter();
-  return (source: SourceFields, cells: readonly string[]): SourceFields | SetAsideRow => {
-    if (!seen.addAndTest(source.key)) return source;
+  return (source: UnderstoodRow, raw: string): SetAsideRow | null => {
+    if (!seen.addAndTest(source.key)) return null;
     if (!ownKeys) {
-      const key = `${source.key} (line ${source.line})`;
-      seen.addAndTest(key);
-      return { ...source, key };
+      source.key = `${source.key} (line ${source.line})`;
+      seen.addAndTest(source.key);
+      return null;
     }
     if (counts.suspectKeys.length < MAX_CHECKED_SUSPECTS) counts.suspectKeys.push(source.key);
     return {
       line: source.line,
       column: null,
       code: 'duplicate-key',
-      message: `The key ${JSON.stringify(source.key)} stands in an earlier row already.`,
-      raw: cells.join(' | ').slice(0, 2000),
+      message: `The key “${source.key}” stands in an earlier row already.`,
+      raw: raw.slice(0, MAX_RAW_CHARACTERS),
     };
   };
 }
 
 const orNull = (value: number | null): number | '\\N' => value ?? '\\N';
 
-function sourceLine(rowNo: number, entryId: number, s: SourceFields, cells: readonly string[]): string {
+function sourceLine(rowNo: number, entryId: number, s: UnderstoodRow, cells: readonly string[]): string {
   return (
-    `${rowNo}\t${entryId}\t${copyTextEscape(s.key)}\t${copyTextEscape(s.designation)}\t${s.raDeg}\t${s.decDeg}\t` +
+    `${rowNo}\t${entryId}\t${copyTextEscape(s.key)}\t${copyTextEscape(s.names[0] ?? s.key)}\t${s.raDeg}\t${s.decDeg}\t` +
     `${orNull(s.errMajArcsec)}\t${orNull(s.errMinArcsec)}\t${orNull(s.errPaDeg)}\t` +
     `${orNull(s.pmRaMasYr)}\t${orNull(s.pmDecMasYr)}\t${copyTextEscape(cells.join(CELL_SEPARATOR))}\n`
   );

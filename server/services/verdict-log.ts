@@ -23,7 +23,11 @@ export function bigintArray(values: Iterable<number>): SQL {
 }
 
 /** Appends verdicts of a person in the order given and puts them in force; returns their ids in that order. */
-export async function appendVerdicts(tx: Tx, actor: GroupActor, spoken: readonly SpokenVerdict[]): Promise<number[]> {
+export async function appendVerdicts(
+  tx: Tx,
+  actor: GroupActor,
+  spoken: readonly SpokenVerdict[],
+): Promise<number[]> {
   if (spoken.length === 0) return [];
   const rows = await tx
     .insert(verdict)
@@ -38,7 +42,11 @@ export async function appendVerdicts(tx: Tx, actor: GroupActor, spoken: readonly
     )
     .returning({ id: verdict.id });
   const ids = rows.map((row) => row.id);
-  await refreshInForce(tx, actor, sql`select entry_a, entry_b from verdict where id = any(${bigintArray(ids)})`);
+  await refreshInForce(
+    tx,
+    actor,
+    sql`select entry_a, entry_b from verdict where id = any(${bigintArray(ids)})`,
+  );
   return ids;
 }
 

@@ -14,7 +14,11 @@ import { runByNumber } from './run-lookup';
 import { appendVerdicts, takeBack, verdictOnPair } from './verdict-log';
 
 /** Gives a verdict on a pair of entries; the latest on a pair counts, earlier ones stay in the log. */
-export async function giveVerdict(context: Context, actor: GroupActor, input: NewVerdict): Promise<VerdictResult> {
+export async function giveVerdict(
+  context: Context,
+  actor: GroupActor,
+  input: NewVerdict,
+): Promise<VerdictResult> {
   return changeRegistry(context, actor, async (tx) => {
     const pair: Pair = [input.entryA, input.entryB];
     await requireObjects(tx, actor, pair);
@@ -26,14 +30,18 @@ export async function giveVerdict(context: Context, actor: GroupActor, input: Ne
 }
 
 /** Takes a verdict back by a later row of the log: a person their own, a curator any. */
-export async function takeBackVerdict(context: Context, actor: GroupActor, id: number): Promise<VerdictResult> {
+export async function takeBackVerdict(
+  context: Context,
+  actor: GroupActor,
+  id: number,
+): Promise<VerdictResult> {
   return changeRegistry(context, actor, async (tx) => {
     const [row] = await tx
       .select({
         entryA: verdict.entryA,
         entryB: verdict.entryB,
         personId: verdict.personId,
-        takenBack: sql<boolean>`exists (select 1 from verdict t where t.takes_back = ${verdict.id})`,
+        takenBack: sql<boolean>`exists (select 1 from verdict t where t.takes_back = verdict.id)`,
       })
       .from(verdict)
       .where(and(eq(verdict.id, id), eq(verdict.groupId, actor.groupId), isNotNull(verdict.value)));

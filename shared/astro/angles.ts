@@ -13,16 +13,11 @@ export type DecNotation = 'degrees' | 'sexagesimal-degrees';
 
 /** A subset of the reasons for which a row is set aside. */
 export type AngleRefusal =
-  | 'no-position'
-  | 'unreadable-number'
-  | 'unreadable-angle'
-  | 'ra-out-of-range'
-  | 'dec-out-of-range';
+  'no-position' | 'unreadable-number' | 'unreadable-angle' | 'ra-out-of-range' | 'dec-out-of-range';
 
 /** `carried`: a seconds field of exactly 60 was carried into the minutes; worth a warning. */
 export type AngleResult =
-  | { ok: true; deg: number; carried: boolean }
-  | { ok: false; code: AngleRefusal; message: string };
+  { ok: true; deg: number; carried: boolean } | { ok: false; code: AngleRefusal; message: string };
 
 /** Cells that say "no value" in published tables. */
 const NO_VALUE = /^(|[-–—.]+|nan|null|none|n\/?a|\\n)$/i;
@@ -40,7 +35,8 @@ export function parseRa(text: string, notation: RaNotation, options?: NumberOpti
   const read = readAngle(text, notation, degPerUnit === 15 ? 'hours' : 'degrees', options);
   if (!read.ok) return read;
   const deg = read.deg * degPerUnit;
-  if (!(deg >= 0 && deg <= 360)) return refusal('ra-out-of-range', text, 'a right ascension lies between 0 and 360 degrees (24 h)');
+  if (!(deg >= 0 && deg <= 360))
+    return refusal('ra-out-of-range', text, 'a right ascension lies between 0 and 360 degrees (24 h)');
   read.deg = deg === 360 ? 0 : deg + 0;
   return read;
 }
@@ -52,7 +48,8 @@ export function parseRa(text: string, notation: RaNotation, options?: NumberOpti
 export function parseDec(text: string, notation: DecNotation, options?: NumberOptions): AngleResult {
   const read = readAngle(text, notation, 'degrees', options);
   if (!read.ok) return read;
-  if (!(read.deg >= -90 && read.deg <= 90)) return refusal('dec-out-of-range', text, 'a declination lies between -90 and 90 degrees');
+  if (!(read.deg >= -90 && read.deg <= 90))
+    return refusal('dec-out-of-range', text, 'a declination lies between -90 and 90 degrees');
   read.deg += 0;
   return read;
 }
@@ -71,7 +68,11 @@ function readAngle(
   const read = readSexagesimal(text, options);
   if (read.ok) {
     if (read.firstUnit !== 'unmarked' && read.firstUnit !== unit) {
-      return refusal('unreadable-angle', text, `the text says ${read.firstUnit}, the column is read as ${unit}`);
+      return refusal(
+        'unreadable-angle',
+        text,
+        `the text says ${read.firstUnit}, the column is read as ${unit}`,
+      );
     }
     return { ok: true, deg: read.value, carried: read.carried };
   }
@@ -105,7 +106,9 @@ function readDecimal(text: string, unit: 'hours' | 'degrees', decimalComma: bool
   const number = suffix ? bare.slice(0, suffix.index) : bare;
   const pointed = decimalComma ? number.replace(',', '.') : number;
   if (DECIMAL.test(pointed)) return { ok: true, deg: Number(pointed), carried: false };
-  const hint = /\d[:\s]\d/.test(number) ? 'it looks sexagesimal, the column is read as decimal' : 'it is not a number';
+  const hint = /\d[:\s]\d/.test(number)
+    ? 'it looks sexagesimal, the column is read as decimal'
+    : 'it is not a number';
   return refusal('unreadable-number', text, hint);
 }
 
@@ -156,7 +159,9 @@ function checkFinite(name: string, value: number): number {
 function splitTicks(ticks: number, scale: number, digits: number): string {
   const wholeSeconds = Math.floor(ticks / scale);
   const two = (value: number) => String(value).padStart(2, '0');
-  const hms = [Math.floor(wholeSeconds / 3600), Math.floor(wholeSeconds / 60) % 60, wholeSeconds % 60].map(two);
+  const hms = [Math.floor(wholeSeconds / 3600), Math.floor(wholeSeconds / 60) % 60, wholeSeconds % 60].map(
+    two,
+  );
   const fraction = digits > 0 ? `.${String(ticks - wholeSeconds * scale).padStart(digits, '0')}` : '';
   return hms.join(':') + fraction;
 }
@@ -234,6 +239,8 @@ function notationOfPair(ra: Shape | null, dec: Shape | null): { ra: RaNotation; 
   if (!ra || !dec || dec.firstUnit === 'hours') return null;
   const raIsBare = ra.fields === 1 && ra.firstUnit === 'unmarked';
   if (raIsBare) return dec.fields === 1 ? { ra: 'sexagesimal-degrees', dec: 'sexagesimal-degrees' } : null;
-  return { ra: ra.firstUnit === 'degrees' ? 'sexagesimal-degrees' : 'sexagesimal-hours', dec: 'sexagesimal-degrees' };
+  return {
+    ra: ra.firstUnit === 'degrees' ? 'sexagesimal-degrees' : 'sexagesimal-hours',
+    dec: 'sexagesimal-degrees',
+  };
 }
-

@@ -52,7 +52,9 @@ export const GENITIVES: ReadonlyMap<string, string> = new Map(
 
 /** First words of the genitives that have two. */
 export const DOUBLE_GENITIVES: ReadonlySet<string> = new Set(
-  [...GENITIVES.keys()].filter((genitive) => genitive.includes(' ')).map((genitive) => genitive.split(' ')[0] ?? ''),
+  [...GENITIVES.keys()]
+    .filter((genitive) => genitive.includes(' '))
+    .map((genitive) => genitive.split(' ')[0] ?? ''),
 );
 
 /** The three-letter forms. */
@@ -74,4 +76,13 @@ export const ZONE_SPELLINGS: ReadonlyMap<string, string> = new Map([['cod', 'cd'
 export const COUNTED_FAMILIES: ReadonlySet<string> = new Set(['eso', 'mcg', 'cgcg']);
 
 /** Families of stars in which a lower-case letter after the number is a planet, an upper-case one a companion star. */
-export const PLANET_FAMILIES: ReadonlySet<string> = new Set(['hd', 'hip', 'hr', 'gj', 'gl', 'gliese', 'kepler', 'toi']);
+export const PLANET_FAMILIES: ReadonlySet<string> = new Set([
+  'hd',
+  'hip',
+  'hr',
+  'gj',
+  'gl',
+  'gliese',
+  'kepler',
+  'toi',
+]);

@@ -65,7 +65,10 @@ function evenCharacters(text: string): string {
 function keyWhereCaseMatters(written: string): string | null {
   const bayer = written.charCodeAt(1) === 32 ? /^([a-z]) ([A-Z][a-z]+.*)$/.exec(written) : null;
   if (bayer) {
-    const [constellation = '', ...rest] = shortenGenitives(['', ...(bayer[2] ?? '').toLowerCase().split(' ')]).slice(1);
+    const [constellation = '', ...rest] = shortenGenitives([
+      '',
+      ...(bayer[2] ?? '').toLowerCase().split(' '),
+    ]).slice(1);
     if (!CONSTELLATIONS.has(constellation)) return null;
     return `${bayer[1]}'${dropBlanks([constellation, ...rest].join(' '))}`;
   }

@@ -50,7 +50,9 @@ export function healpixCell(order: number, raDeg: number, decDeg: number): numbe
   const side = 2 ** order;
   const z = sinDeg(decDeg);
   const quadrants = wrapRaDeg(raDeg) / 90;
-  return Math.abs(z) <= 2 / 3 ? equatorialCell(order, side, quadrants, z) : polarCell(side, quadrants, z, decDeg);
+  return Math.abs(z) <= 2 / 3
+    ? equatorialCell(order, side, quadrants, z)
+    : polarCell(side, quadrants, z, decDeg);
 }
 
 function equatorialCell(order: number, side: number, quadrants: number, z: number): number {

@@ -103,7 +103,8 @@ export function readSexagesimal(text: string, options: NumberOptions = {}): Sexa
     at = skipBlanks(text, stop);
     if (at < end && !isDigit(text.charCodeAt(at)) && text[at] !== '.') {
       const mark = markAt(text, at);
-      if (!mark || !CLOSING[count]?.includes(mark.mark)) return refused(`'${text.charAt(at)}' does not belong there`);
+      if (!mark || !CLOSING[count]?.includes(mark.mark))
+        return refused(`'${text.charAt(at)}' does not belong there`);
       if (count === 0 && mark.mark !== 'colon') firstUnit = mark.mark === 'hour' ? 'hours' : 'degrees';
       if (isPrime(mark.mark) && firstUnit === 'hours') return refused('arcminutes or arcseconds after hours');
       at = skipBlanks(text, mark.end);
@@ -118,7 +119,12 @@ function isPrime(mark: Mark): boolean {
   return mark === 'prime' || mark === 'double-prime';
 }
 
-function combine(fields: number[], count: number, negative: boolean, firstUnit: FirstUnit): SexagesimalReading {
+function combine(
+  fields: number[],
+  count: number,
+  negative: boolean,
+  firstUnit: FirstUnit,
+): SexagesimalReading {
   const [first = 0, minutes = 0, seconds = 0] = fields;
   if (count === 0) return refused('there is no number');
   if (minutes >= 60) return refused('minutes must be below 60');
@@ -172,7 +178,8 @@ function numberBetween(text: string, from: number, to: number, hasFraction: bool
 function markAt(text: string, at: number): { mark: Mark; end: number } | null {
   const mark = MARKS[text.charAt(at)];
   if (!mark) return null;
-  if (mark === 'prime' && MARKS[text.charAt(at + 1)] === 'prime') return { mark: 'double-prime', end: at + 2 };
+  if (mark === 'prime' && MARKS[text.charAt(at + 1)] === 'prime')
+    return { mark: 'double-prime', end: at + 2 };
   if (mark === 'degree' && /^deg/i.test(text.slice(at, at + 3))) return { mark, end: at + 3 };
   return { mark, end: at + 1 };
 }

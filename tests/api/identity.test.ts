@@ -42,20 +42,31 @@ const give = (entryA: number, entryB: number, value: 'same' | 'different') =>
   });
 
 async function expectRebuildable(): Promise<void> {
-  const report = await checkRegistry(world.context.database, { id: world.actors.owner.groupId, slug: world.group });
+  const report = await checkRegistry(world.context.database, {
+    id: world.actors.owner.groupId,
+    slug: world.group,
+  });
   expect(report.differences).toEqual([]);
 }
 
 describe('any sequence of verdicts and of taking them back', () => {
   const SIZE = 7;
   const step = fc.oneof(
-    { weight: 4, arbitrary: fc.tuple(fc.constant('give' as const), fc.nat(SIZE - 1), fc.nat(SIZE - 1), fc.constantFrom(...VERDICT_VALUES)) },
+    {
+      weight: 4,
+      arbitrary: fc.tuple(
+        fc.constant('give' as const),
+        fc.nat(SIZE - 1),
+        fc.nat(SIZE - 1),
+        fc.constantFrom(...VERDICT_VALUES),
+      ),
+    },
     { weight: 1, arbitrary: fc.tuple(fc.constant('take back' as const), fc.nat(1000)) },
   );
 
   it('leaves the registry that its log alone gives, and undoing everything leaves the one of the beginning', async () => {
     await fc.assert(
-      fc.asyncProperty(fc.array(step, { minLength: 4, maxLength: 20 }), async (steps) => {
+      fc.asyncProperty(fc.array(step, { minLength: 4, maxLength: 16 }), async (steps) => {
         // Errors that single precision holds exactly, so that the position of the beginning is the stored one.
         const { entryIds } = await fresh(line(SIZE, 0.25));
         const before = await objectRows(world, entryIds);
@@ -84,9 +95,11 @@ describe('any sequence of verdicts and of taking them back', () => {
         for (const id of standing) await takeBackVerdict(world.context, world.actors.curator, id);
         await expectRebuildable();
         const after = await objectRows(world, entryIds);
-        expect(after.map((row) => ({ ...row, version: 0 }))).toEqual(before.map((row) => ({ ...row, version: 0 })));
+        expect(after.map((row) => ({ ...row, version: 0 }))).toEqual(
+          before.map((row) => ({ ...row, version: 0 })),
+        );
       }),
-      { numRuns: 25 },
+      { numRuns: 12 },
     );
   });
 
@@ -94,18 +107,27 @@ describe('any sequence of verdicts and of taking them back', () => {
     const { entryIds } = await fresh(line(6, 0.25));
     const e = (i: number) => entryIds[i] ?? 0;
     await give(e(0), e(3), 'different');
-    for (const [i, j] of [[0, 1], [2, 3], [1, 2], [4, 5]] as const) await give(e(i), e(j), 'same');
+    const links = [
+      [0, 1],
+      [2, 3],
+      [1, 2],
+      [4, 5],
+    ] as const;
+    for (const [i, j] of links) await give(e(i), e(j), 'same');
     const piecewise = await objectRows(world, entryIds);
     const written = await inTransaction(world.context.database, world.actors.owner, (tx) =>
       applyIdentity(tx, world.actors.owner, 'group'),
     );
     expect(written.changed).toBe(0);
     await inTransaction(world.context.database, world.actors.owner, async (tx) => {
-      await tx.execute(sql`update object set merged_into = null, entries = 1, ra_deg = 0`);
+      await tx.execute(sql`update object set merged_into = null, entries = 1, ra_deg = 0
+        where id between ${e(0)} and ${e(5)}`);
       await applyIdentity(tx, world.actors.owner, 'group');
     });
-    const versions = (rows: typeof piecewise) => rows.map(({ version: _version, raDeg: _raDeg, ...row }) => row);
-    expect(versions(await objectRows(world, entryIds))).toEqual(versions(piecewise));
+    // A forwarding object has no position of its own that anybody would see.
+    const visible = (rows: typeof piecewise) =>
+      rows.map((row) => ({ ...row, version: 0, raDeg: row.mergedInto === null ? row.raDeg : null }));
+    expect(visible(await objectRows(world, entryIds))).toEqual(visible(piecewise));
   });
 });
 

@@ -15,7 +15,10 @@ beforeAll(async () => {
   world = await createWorld();
 });
 afterAll(async () => {
-  const report = await checkRegistry(world.context.database, { id: world.actors.owner.groupId, slug: world.group });
+  const report = await checkRegistry(world.context.database, {
+    id: world.actors.owner.groupId,
+    slug: world.group,
+  });
   expect(report.differences).toEqual([]);
   await world.close();
 });
@@ -119,7 +122,13 @@ describe('splitting by hand', () => {
 
   it('keeps each part together where only the other part had joined it', async () => {
     // 1 and 2 hang on 0, and 3 hangs on 1: without 0 they fall into two pieces.
-    for (const [i, j] of [[0, 1], [0, 2], [1, 3], [2, 4]] as const) await give(i, j, 'same');
+    for (const [i, j] of [
+      [0, 1],
+      [0, 2],
+      [1, 3],
+      [2, 4],
+    ] as const)
+      await give(i, j, 'same');
     const res = await split(number(0), [entry(0), entry(3), entry(4)]);
     expect(res.body).toEqual({ numbers: [number(0), number(1)], conflicts: 0 });
     expect(await partsOf()).toEqual([null, null, entry(1), entry(0), entry(0)]);
@@ -162,8 +171,16 @@ describe('splitting by hand', () => {
     );
     const detail = { act: 'split by hand', remark: 'a neighbour' };
     expect(rows).toEqual([
-      { subject: `object ${number(1)}`, action: 'separated from object', detail: { ...detail, objects: [number(0)] } },
-      { subject: `object ${number(0)}`, action: 'gave back objects', detail: { ...detail, objects: [number(1)] } },
+      {
+        subject: `object ${number(1)}`,
+        action: 'separated from object',
+        detail: { ...detail, objects: [number(0)] },
+      },
+      {
+        subject: `object ${number(0)}`,
+        action: 'gave back objects',
+        detail: { ...detail, objects: [number(1)] },
+      },
     ]);
   });
 });
@@ -178,7 +195,9 @@ describe('who may merge and split', () => {
       expect((await world.agents.nobody.post(world.api(below), body)).status).toBe(401);
       expect((await world.agents.contributor.post(world.api(below), body)).status).toBe(403);
       expect((await world.agents.foreign.post(world.api(below), body)).status).toBe(404);
-      expect((await world.agents.foreign.post(`/api/groups/${world.foreignGroup}/${below}`, body)).status).toBe(404);
+      expect(
+        (await world.agents.foreign.post(`/api/groups/${world.foreignGroup}/${below}`, body)).status,
+      ).toBe(404);
     }
     expect(await partsOf()).toEqual([null, null, null, null, null]);
   });

@@ -110,7 +110,11 @@ describe('the latest verdict on a pair', () => {
 
   it("'unsure' joins nothing", async () => {
     const result = await give(world.agents.contributor, entry(a, 1), entry(b, 1), 'unsure');
-    expect(result).toMatchObject({ objectA: number(a, 1), objectB: number(b, 1), verdict: { value: 'unsure' } });
+    expect(result).toMatchObject({
+      objectA: number(a, 1),
+      objectB: number(b, 1),
+      verdict: { value: 'unsure' },
+    });
   });
 });
 
@@ -158,7 +162,9 @@ describe('ten people at once', () => {
   it('lose no verdict on the same pair, and the last one counts', async () => {
     const values = ['same', 'different'] as const;
     const results = await Promise.all(
-      Array.from({ length: 10 }, (_, i) => give(world.agents.contributor, entry(a, 6), entry(b, 6), values[i % 2] ?? 'same')),
+      Array.from({ length: 10 }, (_, i) =>
+        give(world.agents.contributor, entry(a, 6), entry(b, 6), values[i % 2] ?? 'same'),
+      ),
     );
     const ids = results.map(idOf);
     expect(new Set(ids).size).toBe(10);
@@ -170,7 +176,9 @@ describe('ten people at once', () => {
 
   it('join eleven sources of a chain into one object', async () => {
     await Promise.all(
-      Array.from({ length: 10 }, (_, i) => give(world.agents.contributor, entry(a, i), entry(a, i + 1), 'same')),
+      Array.from({ length: 10 }, (_, i) =>
+        give(world.agents.contributor, entry(a, i), entry(a, i + 1), 'same'),
+      ),
     );
     const rows = await objectRows(world, a.entryIds);
     expect(rows.map((row) => row.mergedInto)).toEqual([null, ...Array<number>(10).fill(entry(a, 0))]);

@@ -4,7 +4,7 @@ import pg from 'pg';
 import { from as copyFrom } from 'pg-copy-streams';
 import { inTransaction, type Tx } from '../../db/client';
 import { alias, object } from '../../db/schema/object';
-import { catalogue, catalogueRevision, entry, storedFile } from '../../db/schema/catalogue';
+import { catalogue, catalogueRevision, storedFile } from '../../db/schema/catalogue';
 import { job } from '../../db/schema/job';
 import { researchGroup } from '../../db/schema/group';
 import type { GroupActor } from '../../server/context';
@@ -188,9 +188,11 @@ async function register(
     name: designationOf(input.label, source, i),
     source,
   }));
-  await tx
-    .insert(entry)
-    .values(rows.map((row) => ({ id: row.id, groupId: row.groupId, catalogueId, key: row.name })));
+  const opened = await tx.execute<{ part: string }>(sql`select open_partition('entry', ${catalogueId}) as part`);
+  await tx.execute(sql`insert into ${sql.raw(opened.rows[0]?.part ?? '')} (id, group_id, catalogue_id, key)
+    select id, ${actor.groupId}::int, ${catalogueId}::int, key
+    from unnest(${sql.param(entryIds)}::bigint[], ${sql.param(rows.map((row) => row.name))}::text[]) as e (id, key)`);
+  await tx.execute(sql`select attach_partition('entry', ${catalogueId})`);
   await tx.insert(object).values(
     rows.map(({ source, ...row }) => ({
       ...row,
