@@ -52,6 +52,6 @@ export function usePaged<Row>(plan: {
     isLoading: list.isPending,
     isLoadingMore: list.isFetchingNextPage,
     problem: list.error,
-    retry: () => void list.refetch(),
+    retry: () => void (list.isFetchNextPageError ? list.fetchNextPage() : list.refetch()),
   };
 }

@@ -11,17 +11,25 @@ import { formatCount, formatDuration } from './quantities';
 import { RelativeTime } from './relative-time';
 
 /** A job as it goes on; follows it by itself. */
-export function JobCard({ jobId, onFinished }: { jobId: string; onFinished?: (job: Job) => void }) {
-  const { slug, can } = useGroup();
-  const { job, problem, retry } = useJob(slug, jobId, onFinished);
-  const cancel = useCancelJob(slug);
+export function JobCard({
+  group,
+  jobId,
+  onFinished,
+}: {
+  group: string;
+  jobId: string;
+  onFinished?: (job: Job) => void;
+}) {
+  const { can } = useGroup();
+  const { job, problem, retry } = useJob(group, jobId, onFinished);
+  const cancel = useCancelJob(group);
   if (job === null) {
     return problem === null ? <Loading label="Loading the job" rows={2} /> : <ProblemNotice problem={problem} retry={retry} />;
   }
   return (
     <JobCardView
       job={job}
-      group={slug}
+      group={group}
       onCancel={can('contributor') ? () => cancel.mutate(job.id) : undefined}
       cancelling={cancel.isPending}
       problem={cancel.error}

@@ -1,10 +1,5 @@
 /** Where on the sky a catalogue has sources: counts in equal-area cells (HEALPix, nested). */
-import {
-  healpixCell,
-  healpixCellAreaDeg2,
-  healpixCentre,
-  MAX_HEALPIX_ORDER,
-} from '../../shared/astro/healpix';
+import { healpixCell, MAX_HEALPIX_ORDER } from '../../shared/astro/healpix';
 import { checkPositions, type PositionColumns } from './positions';
 
 /** Cells that hold sources, ascending by their nested number. */

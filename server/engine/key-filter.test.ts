@@ -12,7 +12,19 @@ describe('key filter', () => {
 
   it('keeps keys apart that differ in order, case, length or one distant character', () => {
     const filter = new KeyFilter();
-    const keys = ['ab', 'ba', 'AB', 'a', 'aa', 'aaa', '', '\u0000', 'α', 'x'.repeat(1000), `${'x'.repeat(999)}y`];
+    const keys = [
+      'ab',
+      'ba',
+      'AB',
+      'a',
+      'aa',
+      'aaa',
+      '',
+      '\u0000',
+      'α',
+      'x'.repeat(1000),
+      `${'x'.repeat(999)}y`,
+    ];
     expect(keys.map((key) => filter.addAndTest(key))).toEqual(keys.map(() => false));
   });
 });

@@ -42,7 +42,9 @@ function guessCommentPrefix(lines: readonly string[]): string | null {
     const inside = prefix === '#' || prefix === '//' ? filled.filter(isComment).length : 0;
     if (inside > 0 && inside <= 0.2 * filled.length) return prefix;
   }
-  return filled.length > 0 && filled.every((line) => line.startsWith('#')) && !filled.some(hasSeparator) ? '#' : null;
+  return filled.length > 0 && filled.every((line) => line.startsWith('#')) && !filled.some(hasSeparator)
+    ? '#'
+    : null;
 }
 
 /** '--' may be a missing value in the first cell, or two signs of a number. */
@@ -74,7 +76,8 @@ function guessDelimiter(
     .map((candidate) => ({ candidate, score: scoreOf(candidate) }))
     .filter(({ score }) => score.width > 1 && score.agreement >= MIN_AGREEMENT);
   const visible = scored.filter(({ candidate }) => candidate.delimiter !== 'spaces');
-  const best = (visible.length > 0 ? visible : scored).sort((a, b) => b.score.rank - a.score.rank)[0]?.candidate;
+  const best = (visible.length > 0 ? visible : scored).sort((a, b) => b.score.rank - a.score.rank)[0]
+    ?.candidate;
   if (best === undefined || (best.delimiter === 'spaces' && isPositionPerLine(best.rows))) {
     return readCandidate(lines, ',', commentPrefix, known.quoted);
   }
@@ -158,8 +161,8 @@ function isPositionPerLine(rows: readonly Row[]): boolean {
 }
 
 /**
- * The first row is a header when nothing in it is a value and something below is, or when it has words that tables
- * of sources use.
+ * The first row is a header when nothing in it is a value and something below is, or has digits all the way down; or
+ * when it has words that tables of sources use.
  */
 function looksLikeHeader(rows: readonly Row[]): boolean {
   const [first, ...rest] = rows;
@@ -169,7 +172,13 @@ function looksLikeHeader(rows: readonly Row[]): boolean {
   const known = filled.filter((cell) => readHeader(cell).role !== null).length;
   if (filled.some(isValue)) return known >= 2 && known > filled.length / 2;
   if (known > 0 || rest.length === 0) return true;
-  return rest.some((row) => row?.some((cell) => !hasNoValue(cell) && isValue(cell)) === true);
+  return first.some((cell, index) => {
+    const below = rest.flatMap((row) =>
+      row === null || hasNoValue(row[index] ?? '') ? [] : [row[index] ?? ''],
+    );
+    if (below.some(isValue)) return true;
+    return below.length > 1 && !/\d/.test(cell) && below.every((value) => /\d/.test(value));
+  });
 }
 
 /** Some cells have a comma before their last digits, and none has a point there. */

@@ -46,10 +46,17 @@ export async function readHead(openStream: () => Readable, options: HeadOptions)
 
 /** The refusal of a file in which there is nothing to read. */
 export function emptyFile(sentence: string): UnreadableFile {
-  return new UnreadableFile('file-empty', sentence, 'Upload a table with a header and one row for each source.');
+  return new UnreadableFile(
+    'file-empty',
+    sentence,
+    'Upload a table with a header and one row for each source.',
+  );
 }
 
-async function readStart(chunks: AsyncIterable<unknown>, limit: number): Promise<{ bytes: Buffer; whole: boolean }> {
+async function readStart(
+  chunks: AsyncIterable<unknown>,
+  limit: number,
+): Promise<{ bytes: Buffer; whole: boolean }> {
   const parts: Buffer[] = [];
   let length = 0;
   // Leaving the loop early closes the stream.
@@ -105,7 +112,10 @@ const OTHER_KINDS: readonly (readonly [string, string, string])[] = [
 ];
 
 function refuseNoText(bytes: Buffer): void {
-  const start = bytes.subarray(bomLength(bytes), bomLength(bytes) + 16).toString('latin1').trimStart();
+  const start = bytes
+    .subarray(bomLength(bytes), bomLength(bytes) + 16)
+    .toString('latin1')
+    .trimStart();
   const other = OTHER_KINDS.find(([sign]) => start.startsWith(sign));
   if (other !== undefined) throw binaryFile(`The file is ${other[1]}, not a text table.`, other[2]);
   if (isUtf16(bytes)) {
@@ -119,7 +129,10 @@ function refuseNoText(bytes: Buffer): void {
   const nuls = bytes.reduce((count, byte) => (byte === 0 ? count + 1 : count), 0);
   const controls = looked.reduce((count, byte) => (isControl(byte) ? count + 1 : count), 0);
   if (nuls > MAX_NUL_SHARE * bytes.length || controls > MAX_CONTROL_SHARE * looked.length) {
-    throw binaryFile('The file holds binary data, not a text table.', 'Export the table as CSV and upload that.');
+    throw binaryFile(
+      'The file holds binary data, not a text table.',
+      'Export the table as CSV and upload that.',
+    );
   }
 }
 

@@ -7,6 +7,8 @@ import { suggestMapping } from './suggest-mapping';
 import { readTableHead } from './table-head';
 import { UnreadableFile } from './unreadable-file';
 
+export { UnreadableFile };
+
 const SAMPLE_ROWS = 20;
 
 /**
@@ -14,13 +16,19 @@ const SAMPLE_ROWS = 20;
  * look like, and what they may mean. Parts of the dialect in `options` are taken as given. `openStream` must open the
  * file anew each time. Throws UnreadableFile with a code, a sentence and a hint.
  */
-export async function inspectTextTable(openStream: () => Readable, options: HeadOptions): Promise<FileInspection> {
+export async function inspectTextTable(
+  openStream: () => Readable,
+  options: HeadOptions,
+): Promise<FileInspection> {
   const head = await readHead(openStream, options);
   const table = readTableHead(head, options.dialect ?? {});
   const { dialect, names, batch } = table;
-  const rows = batch.cells.filter((row) => row !== null && row.length >= names.length);
+  const rows = batch.cells.filter((row) => row !== null).filter((row) => row.length >= names.length);
   const profiles = names.map((name, index) => profileColumn(rows, index, name, dialect.decimalComma));
-  const suggestedMapping = suggestMapping(profiles, { decimalComma: dialect.decimalComma, whole: table.whole });
+  const suggestedMapping = suggestMapping(profiles, {
+    decimalComma: dialect.decimalComma,
+    whole: table.whole,
+  });
   if (names.length === 1 && suggestedMapping === null) {
     throw new UnreadableFile(
       'file-one-column',

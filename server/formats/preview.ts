@@ -1,5 +1,11 @@
 import type { Readable } from 'node:stream';
-import type { ColumnMapping, MappingPreview, SetAsideRow, TextDialect, UnderstoodRow } from '../../shared/schemas/mapping';
+import type {
+  ColumnMapping,
+  MappingPreview,
+  SetAsideRow,
+  TextDialect,
+  UnderstoodRow,
+} from '../../shared/schemas/mapping';
 import { readHead } from './file-head';
 import { columnTitle, MAX_RAW_LENGTH, storableText } from './shown-text';
 import { readTableHead, type TableHead } from './table-head';
@@ -26,8 +32,16 @@ export async function previewMapping(
   return previewOf(readTableHead(head, dialect), mapping, limit);
 }
 
-function previewOf({ dialect, names, batch }: TableHead, mapping: ColumnMapping, limit: number): MappingPreview {
-  const reader = compileMapping(mapping, names.map((name) => ({ name })), dialect);
+function previewOf(
+  { dialect, names, batch }: TableHead,
+  mapping: ColumnMapping,
+  limit: number,
+): MappingPreview {
+  const reader = compileMapping(
+    mapping,
+    names.map((name) => ({ name })),
+    dialect,
+  );
   const firstLineOfKey = new Map<string, number>();
   const rows: UnderstoodRow[] = [];
   const setAside: SetAsideRow[] = [];

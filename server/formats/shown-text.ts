@@ -1,7 +1,6 @@
 const SHOWN_LENGTH = 40;
 /** How much of a row that is set aside is kept. */
 export const MAX_RAW_LENGTH = 2_000;
-// eslint-disable-next-line no-control-regex -- control characters are what is replaced
 const CONTROLS = /[\u0000-\u0008\u000b\u000c\u000e-\u001f]/g;
 
 const LONE_SURROGATE = /[\ud800-\udbff](?![\udc00-\udfff])|(?<![\ud800-\udbff])[\udc00-\udfff]/g;

@@ -28,7 +28,8 @@ export function readTableHead(head: FileHead, known: Partial<TextDialect>): Tabl
   const { compression, encoding, lines } = head;
   const dialect: TextDialect = { compression, encoding, ...guessLayout(lines, known) };
   const { batch, header, whole } = firstRows(head, dialect);
-  if (header === null && batch.lines.length === 0) throw emptyFile('The file holds nothing but comments and blank lines.');
+  if (header === null && batch.lines.length === 0)
+    throw emptyFile('The file holds nothing but comments and blank lines.');
   if (batch.lines.length === 0) {
     throw new UnreadableFile(
       'file-header-only',
@@ -76,7 +77,8 @@ function columnNames(header: readonly string[] | null, batch: RowBatch): string[
   const lastIsEmpty = rows.every((row) => row.length < width || (row[width - 1] ?? '').trim() === '');
   if (header === null) return new Array<string>(lastIsEmpty && width > 1 ? width - 1 : width).fill('');
   if (header.length === width - 1 && !lastIsEmpty) return ['', ...header];
-  const trailing = header.length > 1 && (header.at(-1) ?? '').trim() === '' && header.length >= width && lastIsEmpty;
+  const trailing =
+    header.length > 1 && (header.at(-1) ?? '').trim() === '' && header.length >= width && lastIsEmpty;
   return trailing ? header.slice(0, -1) : [...header];
 }
 
@@ -92,7 +94,12 @@ function commentHeader(lines: readonly string[], dialect: TextDialect, batch: Ro
     const reader = new RecordReader({ ...dialect, header: true, commentPrefix: null });
     reader.push({ firstLine: 1, lines: [text], quotes: true });
     const cells = reader.header;
-    if (cells === null || cells.length !== width || cells.some((cell) => (readNumber(cell, true) ?? NaN) >= 0)) continue;
+    if (
+      cells === null ||
+      cells.length !== width ||
+      cells.some((cell) => (readNumber(cell, true) ?? NaN) >= 0)
+    )
+      continue;
     if (cells.some((cell) => readHeader(cell).role !== null)) return cells;
   }
   return null;

@@ -5,7 +5,6 @@ import type { Refusal, Step, TableShape } from './understand';
 import { checkColumns, inColumn } from './understand-position';
 
 const MAX_NAME_LENGTH = 200;
-// eslint-disable-next-line no-control-regex -- control characters are what is looked for
 const CONTROL = /[\u0000-\u001f\u007f-\u009f]/;
 
 /**

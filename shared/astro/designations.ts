@@ -20,6 +20,8 @@ import {
 import { isDigit } from './sexagesimal';
 
 const PLAIN = /^[\x20-\x5e\x60-\x7e]*$/;
+/** Between a plain digit and a raised, lowered, circled one or a fraction, which compatibility forms make plain. */
+const RAISED_DIGIT_EDGE = /(?<=\d)(?=[²³¹¼-¾⁰⁴-⁹₀-₉①-⒛])|(?<=[²³¹¼-¾⁰⁴-⁹₀-₉①-⒛])(?=\d)/g;
 const MAX_SEQUENCE_DIGITS = 9;
 const MIN_COORDINATE_DIGITS = 4;
 
@@ -48,7 +50,7 @@ function evenCharacters(text: string): string {
     .replace(/[\p{Cc}\p{Cf}\p{Cs}]+/gu, '')
     .replace(/º/g, '°')
     // '1234²' must not become '12342': a raised digit next to a plain one stays apart.
-    .replace(/(?<=\d)(?=\p{No})|(?<=\p{No})(?=\d)/gu, '^');
+    .replace(RAISED_DIGIT_EDGE, '^');
   const even = visible
     .normalize('NFKC')
     .replace(/[\u2010-\u2015\u2043\u2212]/g, '-')
