@@ -26,7 +26,10 @@ const groupPages: RouteObject[] = [
     path: 'catalogues/:label',
     lazy: async () => ({ Component: (await import('./pages/catalogues/catalogue-page')).CataloguePage }),
   },
-  { path: 'cross-match', lazy: async () => ({ Component: (await import('./pages/crossmatch/runs-page')).RunsPage }) },
+  {
+    path: 'cross-match',
+    lazy: async () => ({ Component: (await import('./pages/crossmatch/runs-page')).RunsPage }),
+  },
   {
     path: 'cross-match/new',
     lazy: async () => ({ Component: (await import('./pages/crossmatch/new-run-page')).NewRunPage }),
@@ -35,9 +38,18 @@ const groupPages: RouteObject[] = [
     path: 'cross-match/:run',
     lazy: async () => ({ Component: (await import('./pages/crossmatch/run-page')).RunPage }),
   },
-  { path: 'review', lazy: async () => ({ Component: (await import('./pages/review/review-page')).ReviewPage }) },
-  { path: 'review/:run', lazy: async () => ({ Component: (await import('./pages/review/desk-page')).DeskPage }) },
-  { path: 'objects', lazy: async () => ({ Component: (await import('./pages/objects/objects-page')).ObjectsPage }) },
+  {
+    path: 'review',
+    lazy: async () => ({ Component: (await import('./pages/review/review-page')).ReviewPage }),
+  },
+  {
+    path: 'review/:run',
+    lazy: async () => ({ Component: (await import('./pages/review/desk-page')).DeskPage }),
+  },
+  {
+    path: 'objects',
+    lazy: async () => ({ Component: (await import('./pages/objects/objects-page')).ObjectsPage }),
+  },
   {
     path: 'objects/:number',
     lazy: async () => ({ Component: (await import('./pages/objects/object-page')).ObjectPage }),

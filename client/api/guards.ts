@@ -18,24 +18,27 @@ export function firstAddress({ person, memberships, needsSetup }: SessionState):
 
 /** An address to come back to after signing in: only a path of this application, nothing that leads elsewhere. */
 export function safeBack(back: string | null): string | null {
-  return back !== null && /^\/(g\/|groups$)/.test(back) && !back.includes('\\') && !back.includes('//') ? back : null;
+  return back !== null && /^\/(g\/|groups$)/.test(back) && !back.includes('\\') && !back.includes('//')
+    ? back
+    : null;
 }
 
 /** Guard of pages that need a sign-in; the address is kept for afterwards. */
-export async function needsPerson({ request }: LoaderFunctionArgs): Promise<SessionState> {
+export async function needsPerson({ request }: LoaderFunctionArgs): Promise<SessionState | Response> {
   const state = await session();
-  if (state.needsSetup) throw redirect('/set-up');
+  if (state.needsSetup) return redirect('/set-up');
   if (state.person === null) {
     const { pathname, search } = new URL(request.url);
-    throw redirect(`/sign-in?back=${encodeURIComponent(pathname + search)}`);
+    return redirect(`/sign-in?back=${encodeURIComponent(pathname + search)}`);
   }
   return state;
 }
 
 /** Guard of the pages of a group: a foreign group and a missing one look the same. */
-export async function needsMembership(args: LoaderFunctionArgs): Promise<null> {
-  const { memberships } = await needsPerson(args);
-  if (memberships.some(({ group }) => group === args.params.group)) return null;
+export async function needsMembership(args: LoaderFunctionArgs): Promise<Response | null> {
+  const state = await needsPerson(args);
+  if (state instanceof Response) return state;
+  if (state.memberships.some(({ group }) => group === args.params.group)) return null;
   throw new ProblemError({
     code: 'not-found',
     status: 404,

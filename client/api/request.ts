@@ -21,7 +21,9 @@ export const OWN_HEADER = ['X-Idem', '1'] as const;
 
 /** Path of a group's API: `groupPath('lantern', 'runs', 3)` is '/api/groups/lantern/runs/3'. */
 export function groupPath(group: string, ...parts: readonly (string | number)[]): string {
-  return ['/api/groups', group, ...parts].map((part, i) => (i === 0 ? part : encodeURIComponent(part))).join('/');
+  return ['/api/groups', group, ...parts]
+    .map((part, i) => (i === 0 ? part : encodeURIComponent(part)))
+    .join('/');
 }
 
 /** A path with its query, for requests and for plain links (downloads). */

@@ -12,7 +12,7 @@ export const sessionEnd = {
   get: () => ended,
   announce: () => set(true),
   clear: () => set(false),
-  subscribe(onChange: () => void): () => void {
+  subscribe: (onChange: () => void) => {
     listeners.add(onChange);
     return () => listeners.delete(onChange);
   },

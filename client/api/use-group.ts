@@ -7,7 +7,7 @@ export interface CurrentGroup {
   name: string;
   role: Role;
   /** True when the person's role in this group allows what `needed` allows. */
-  can(needed: Role): boolean;
+  can: (needed: Role) => boolean;
 }
 
 /** The group of the address. Only for pages below /g/:group, whose guard has checked the membership. */

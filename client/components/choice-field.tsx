@@ -25,10 +25,7 @@ export function ChoiceField<V extends string>({
 }) {
   const name = useId();
   return (
-    <fieldset
-      className="grid gap-1.5"
-      aria-describedby={error === undefined ? undefined : `${name}-error`}
-    >
+    <fieldset className="grid gap-1.5" aria-describedby={error === undefined ? undefined : `${name}-error`}>
       <legend className="mb-1 font-medium">{legend}</legend>
       <div className={inline ? 'flex flex-wrap gap-x-5 gap-y-1.5' : 'grid gap-1.5'}>
         {options.map((option) => (

@@ -28,16 +28,10 @@ export function Coordinates({
   return (
     <span className="inline-flex flex-wrap items-center gap-x-3 gap-y-1">
       <span className="whitespace-nowrap">
-        <span className="sr-only">
-          RA
-        </span>{' '}
-        {shown[0]}
+        <span className="sr-only">RA</span> {shown[0]}
       </span>
       <span className="whitespace-nowrap">
-        <span className="sr-only">
-          Dec
-        </span>{' '}
-        {shown[1]}
+        <span className="sr-only">Dec</span> {shown[1]}
       </span>
       {copy && (
         <CopyButton

@@ -116,10 +116,18 @@ function TableBody<Row>({
         aria-colcount={shown.length}
       >
         <TableHead columns={shown} table={table} style={{ ...grid, height: rowHeightPx }} />
-        <div role="rowgroup" className="relative" style={{ height: virtual.getTotalSize(), minWidth: grid.minWidth }}>
+        <div
+          role="rowgroup"
+          className="relative"
+          style={{ height: virtual.getTotalSize(), minWidth: grid.minWidth }}
+        >
           {items.map((item) => {
             const row = rows[item.index];
-            const place: CSSProperties = { ...grid, height: rowHeightPx, transform: `translateY(${item.start}px)` };
+            const place: CSSProperties = {
+              ...grid,
+              height: rowHeightPx,
+              transform: `translateY(${item.start}px)`,
+            };
             if (row === undefined) return <LoadingRow key="loading" style={place} columns={shown.length} />;
             const key = rowKey(row);
             return (

@@ -89,7 +89,12 @@ function FindBox({ group, asked }: { group: string; asked: string }) {
         className="min-h-9 w-full rounded-sm border border-edge bg-raised px-3 placeholder:text-muted hover:border-ink"
       />
       {shown && (
-        <Suggestions id={listId} suggestions={suggestions} chosen={chosen} onChoose={(number) => go(`/g/${group}/objects/${number}`)} />
+        <Suggestions
+          id={listId}
+          suggestions={suggestions}
+          chosen={chosen}
+          onChoose={(number) => go(`/g/${group}/objects/${number}`)}
+        />
       )}
     </form>
   );

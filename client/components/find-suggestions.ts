@@ -12,7 +12,10 @@ export interface FindSuggestion {
 export function findSuggestions(answer: FindAnswer, most: number): FindSuggestion[] {
   const exact = answer.exact.map((object) => ({
     number: object.number,
-    text: object.alias === null || object.alias === object.name ? object.name : `${object.alias} = ${object.name}`,
+    text:
+      object.alias === null || object.alias === object.name
+        ? object.name
+        : `${object.alias} = ${object.name}`,
     remark: object.sepArcsec === null ? `no. ${object.number}` : formatSepArcsec(object.sepArcsec),
   }));
   const near = answer.nearMisses.map((miss) => ({

@@ -24,7 +24,11 @@ export function JobCard({
   const { job, problem, retry } = useJob(group, jobId, onFinished);
   const cancel = useCancelJob(group);
   if (job === null) {
-    return problem === null ? <Loading label="Loading the job" rows={2} /> : <ProblemNotice problem={problem} retry={retry} />;
+    return problem === null ? (
+      <Loading label="Loading the job" rows={2} />
+    ) : (
+      <ProblemNotice problem={problem} retry={retry} />
+    );
   }
   return (
     <JobCardView
@@ -58,7 +62,11 @@ export function JobCardView({
     <article className="grid gap-2 border border-rule bg-raised p-4" aria-label={job.title}>
       <div className="flex flex-wrap items-center justify-between gap-x-4 gap-y-2">
         <p className="font-bold">
-          {job.link !== null && job.state === 'done' ? <Link to={`/g/${group}/${job.link}`}>{job.title}</Link> : job.title}
+          {job.link !== null && job.state === 'done' ? (
+            <Link to={`/g/${group}/${job.link}`}>{job.title}</Link>
+          ) : (
+            job.title
+          )}
         </p>
         <div className="flex items-center gap-3">
           <JobStateChip state={job.state} />
@@ -109,7 +117,8 @@ function JobFigures({ job }: { job: Job }) {
   if (job.total !== null) parts.push(`${formatCount(job.done)} of ${formatCount(job.total)}`);
   else if (job.done > 0) parts.push(formatCount(job.done));
   if (share !== null && !isFinished(job)) parts.push(`${Math.floor(share * 100)}\u2009%`);
-  if (job.ratePerSecond !== null && job.state === 'running') parts.push(`${formatCount(job.ratePerSecond)} per second`);
+  if (job.ratePerSecond !== null && job.state === 'running')
+    parts.push(`${formatCount(job.ratePerSecond)} per second`);
   if (secondsLeft !== null) parts.push(`${formatDuration(secondsLeft)} left`);
   if (tookSeconds !== null) parts.push(`took ${formatDuration(tookSeconds)}`);
   return (

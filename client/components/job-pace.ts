@@ -1,7 +1,9 @@
 import type { Job } from '../../shared/schemas/job';
 
 /** Progress of a job as numbers to show; null where nothing can be said. */
-export function jobPace(job: Pick<Job, 'state' | 'done' | 'total' | 'ratePerSecond' | 'startedAt' | 'finishedAt'>): {
+export function jobPace(
+  job: Pick<Job, 'state' | 'done' | 'total' | 'ratePerSecond' | 'startedAt' | 'finishedAt'>,
+): {
   /** Share done, 0..1. */
   share: number | null;
   secondsLeft: number | null;

@@ -18,7 +18,8 @@ function relist(): void {
 
 function onKeyDown(event: KeyboardEvent): void {
   if (event.defaultPrevented || event.isComposing || keysChoice.get() === 'off') return;
-  const target = event.target instanceof HTMLElement || event.target instanceof SVGElement ? event.target : null;
+  const target =
+    event.target instanceof HTMLElement || event.target instanceof SVGElement ? event.target : null;
   if (target !== null) {
     const editable = target instanceof HTMLElement && target.isContentEditable;
     if (takesText(target.tagName, target.getAttribute('type'), editable)) return;
@@ -38,7 +39,10 @@ function onKeyDown(event: KeyboardEvent): void {
  * Keys of a page, in force while it is drawn and listed by '?'. They keep silent while text is typed, while a
  * dialog is open, and when the person has switched keys off. `enabled: false` takes them back for the while.
  */
-export function useKeys(bindings: readonly KeyBinding[], { enabled = true }: { enabled?: boolean } = {}): void {
+export function useKeys(
+  bindings: readonly KeyBinding[],
+  { enabled = true }: { enabled?: boolean } = {},
+): void {
   const holder = useRef<readonly KeyBinding[]>([]);
   // What the list shows; actions may change at every drawing without a new listing.
   const signature = enabled ? bindings.map((binding) => `${binding.key}\t${binding.label}`).join('\n') : '';

@@ -21,8 +21,8 @@ export function Popover({
 }) {
   const [open, setOpen] = useState(false);
   const root = useRef<HTMLDivElement>(null);
-  const button = useRef<HTMLButtonElement>(null);
   const panelId = useId();
+  const buttonId = `${panelId}-button`;
   useEffect(() => {
     if (!open) return;
     const onPress = (event: PointerEvent) => {
@@ -34,7 +34,7 @@ export function Popover({
 
   const close = () => {
     setOpen(false);
-    button.current?.focus();
+    document.getElementById(buttonId)?.focus();
   };
   return (
     <div
@@ -46,11 +46,12 @@ export function Popover({
         close();
       }}
       onBlur={(event) => {
-        if (event.relatedTarget !== null && !event.currentTarget.contains(event.relatedTarget)) setOpen(false);
+        if (event.relatedTarget !== null && !event.currentTarget.contains(event.relatedTarget))
+          setOpen(false);
       }}
     >
       <button
-        ref={button}
+        id={buttonId}
         type="button"
         aria-expanded={open}
         aria-controls={open ? panelId : undefined}

@@ -17,7 +17,10 @@ export const RULER_LABELS: readonly { sepArcsec: number; text: string }[] = [
 /** Unlabelled ticks: 2..9 times each power of ten up to 10″, then 2..9 times ten up to 60″ and whole arcminutes. */
 export const RULER_TICKS: readonly number[] = [
   ...[0.01, 0.1, 1].flatMap((decade) => [2, 3, 4, 5, 6, 7, 8, 9].map((n) => n * decade)),
-  20, 30, 40, 50,
+  20,
+  30,
+  40,
+  50,
   ...[2, 3, 4, 5, 6, 7, 8, 9].map((minutes) => minutes * 60),
 ];
 

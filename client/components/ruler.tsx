@@ -97,7 +97,9 @@ function RulerLine({ widthPx, y, numbers }: { widthPx: number; y: number; number
             key={text}
             x={rulerPx(sepArcsec, widthPx)}
             y={y + 20}
-            textAnchor={sepArcsec === RULER_MIN_ARCSEC ? 'start' : sepArcsec === RULER_MAX_ARCSEC ? 'end' : 'middle'}
+            textAnchor={
+              sepArcsec === RULER_MIN_ARCSEC ? 'start' : sepArcsec === RULER_MAX_ARCSEC ? 'end' : 'middle'
+            }
             dx={sepArcsec === RULER_MIN_ARCSEC ? -SIDE_PX : sepArcsec === RULER_MAX_ARCSEC ? SIDE_PX : 0}
             fontSize={12}
             fill="var(--muted)"
@@ -121,7 +123,13 @@ function Mark({ mark, widthPx, y }: { mark: RulerMark; widthPx: number; y: numbe
     <g stroke={colour} aria-hidden="true">
       {high > low && <path d={`M${low} ${y - 8}v4m0 -2H${high}m0 -2v4`} fill="none" strokeWidth={1.25} />}
       <line x1={x} x2={x} y1={y - (emphasis ? 13 : 10)} y2={y} strokeWidth={emphasis ? 3 : 2} />
-      {beyond !== 0 && <path d={`M${x} ${y - 7}h${beyond * 9}m${-beyond * 4} -3l${beyond * 4} 3l${-beyond * 4} 3`} fill="none" strokeWidth={1.5} />}
+      {beyond !== 0 && (
+        <path
+          d={`M${x} ${y - 7}h${beyond * 9}m${-beyond * 4} -3l${beyond * 4} 3l${-beyond * 4} 3`}
+          fill="none"
+          strokeWidth={1.5}
+        />
+      )}
     </g>
   );
 }

@@ -36,7 +36,12 @@ export function Shell() {
       </div>
       <div className="min-w-0">
         <TopBar onKeys={() => setKeysOpen(true)} />
-        <main ref={main} id="main" tabIndex={-1} className="mx-auto max-w-[100rem] px-4 py-5 outline-none sm:px-6">
+        <main
+          ref={main}
+          id="main"
+          tabIndex={-1}
+          className="mx-auto max-w-[100rem] px-4 py-5 outline-none sm:px-6"
+        >
           <Outlet />
         </main>
       </div>

@@ -1,12 +1,16 @@
 /** A choice of this browser, kept in its storage; works without it when storage is switched off. */
 export interface StoredChoice<V extends string> {
-  get(): V;
-  set(value: V): void;
-  subscribe(onChange: () => void): () => void;
+  get: () => V;
+  set: (value: V) => void;
+  subscribe: (onChange: () => void) => () => void;
 }
 
 /** A choice under `idem.<name>`; anything else that stands there counts as the fallback. */
-export function storedChoice<V extends string>(name: string, values: readonly V[], fallback: V): StoredChoice<V> {
+export function storedChoice<V extends string>(
+  name: string,
+  values: readonly V[],
+  fallback: V,
+): StoredChoice<V> {
   const key = `idem.${name}`;
   const listeners = new Set<() => void>();
   let current = read(key, values) ?? fallback;

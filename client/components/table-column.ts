@@ -32,8 +32,13 @@ export function columnWidthPx<Row>(column: Column<Row>): number {
 }
 
 /** Columns to show: those named, in the table's own order; all that are not hidden when nothing was chosen. */
-export function visibleColumns<Row>(columns: readonly Column<Row>[], chosen: readonly string[] | null): Column<Row>[] {
-  const shown = columns.filter((column) => (chosen === null ? column.hidden !== true : chosen.includes(column.id)));
+export function visibleColumns<Row>(
+  columns: readonly Column<Row>[],
+  chosen: readonly string[] | null,
+): Column<Row>[] {
+  const shown = columns.filter((column) =>
+    chosen === null ? column.hidden !== true : chosen.includes(column.id),
+  );
   return shown.length > 0 ? shown : columns.slice(0, 1);
 }
 

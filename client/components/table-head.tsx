@@ -15,7 +15,12 @@ export function TableHead<Row>({
 }) {
   return (
     <div role="rowgroup" className="sticky top-0 z-10" style={{ minWidth: style.minWidth }}>
-      <div role="row" aria-rowindex={1} style={style} className="grid items-center border-b border-edge bg-raised">
+      <div
+        role="row"
+        aria-rowindex={1}
+        style={style}
+        className="grid items-center border-b border-edge bg-raised"
+      >
         {columns.map((column) => (
           <HeadCell key={column.id} column={column} table={table} />
         ))}
@@ -36,7 +41,9 @@ function HeadCell<Row>({ column, table }: { column: Column<Row>; table?: TableSt
   return (
     <div
       role="columnheader"
-      aria-sort={!sortable ? undefined : order === 'asc' ? 'ascending' : order === 'desc' ? 'descending' : 'none'}
+      aria-sort={
+        !sortable ? undefined : order === 'asc' ? 'ascending' : order === 'desc' ? 'descending' : 'none'
+      }
       title={column.explain}
       className="flex h-full min-w-0 items-stretch text-xs"
     >
@@ -56,7 +63,10 @@ function HeadCell<Row>({ column, table }: { column: Column<Row>; table?: TableSt
         </button>
       ) : (
         <span
-          className={classNames('flex w-full min-w-0 items-center px-2.5', column.numeric === true && 'justify-end')}
+          className={classNames(
+            'flex w-full min-w-0 items-center px-2.5',
+            column.numeric === true && 'justify-end',
+          )}
         >
           {text}
         </span>

@@ -2,7 +2,9 @@ import type { Column } from './table-column';
 
 /** Rows as tab-separated text with a head line, for pasting into a spreadsheet or a file. */
 export function tableTsv<Row>(columns: readonly Column<Row>[], rows: readonly Row[]): string {
-  const head = columns.map((column) => tsvCell(column.unit ? `${column.header} (${column.unit})` : column.header));
+  const head = columns.map((column) =>
+    tsvCell(column.unit ? `${column.header} (${column.unit})` : column.header),
+  );
   const lines = rows.map((row) => columns.map((column) => tsvCell(cellText(column, row))).join('\t'));
   return `${[head.join('\t'), ...lines].join('\n')}\n`;
 }

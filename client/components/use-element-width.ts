@@ -1,7 +1,9 @@
 import { useCallback, useState } from 'react';
 
 /** Width of an element in whole px, followed as it changes; `fallbackPx` until it has been measured. */
-export function useElementWidth(fallbackPx: number): [(element: Element | null) => (() => void) | undefined, number] {
+export function useElementWidth(
+  fallbackPx: number,
+): [(element: Element | null) => (() => void) | undefined, number] {
   const [widthPx, setWidthPx] = useState(fallbackPx);
   const ref = useCallback((element: Element | null) => {
     if (element === null) return undefined;

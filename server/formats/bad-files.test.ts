@@ -111,6 +111,20 @@ describe('what goes wrong further on', () => {
     }
   });
 
+  it('bad bytes right behind a chunk border', async () => {
+    for (const lineEnd of ['\n', '\r\n', '\r']) {
+      const bad = Buffer.concat([
+        Buffer.from(`a${lineEnd}é${lineEnd}b${lineEnd}`),
+        Buffer.from([0xff]),
+        Buffer.from(lineEnd),
+      ]);
+      for (let chunkBytes = 1; chunkBytes < 9; chunkBytes += 1) {
+        const reading = refusalOf(() => allRows(bad, {}, chunkBytes));
+        expect((await reading).line, `${JSON.stringify(lineEnd)} ${chunkBytes}`).toBe(4);
+      }
+    }
+  });
+
   it('a character cut short at the end of the file', async () => {
     expect(
       await drain(Buffer.concat([Buffer.from('a,b\n1,2\n3,'), Buffer.from([0xe5, 0xa4])])),
@@ -147,7 +161,7 @@ describe('what goes wrong further on', () => {
   });
 
   it('a gzip bomb, by its ratio', async () => {
-    const block = Buffer.from('1,2\n'.repeat(256 * 1024));
+    const block = Buffer.from(`1,${'2'.repeat(4093)}\n`.repeat(256));
     const bomb = createGzip({ level: 9 });
     Readable.from(
       Array.from({ length: 120 }, () => block),

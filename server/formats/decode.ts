@@ -77,14 +77,16 @@ export function unfinishedTail(bytes: Buffer): number {
   return 0;
 }
 
-/** Where the first line with bad bytes begins; no UTF-8 character holds the byte of a line feed. */
+/** Where the first line with bad bytes begins; no UTF-8 character holds the byte of a line end. */
 function badLineStart(bytes: Buffer): number {
   let start = 0;
-  for (;;) {
-    const end = bytes.indexOf(LINE_FEED, start);
-    if (end < 0 || !isUtf8(bytes.subarray(start, end))) return start;
-    start = end + 1;
+  for (let at = 0; at < bytes.length; at += 1) {
+    const byte = bytes[at];
+    if (byte !== LINE_FEED && byte !== CARRIAGE_RETURN) continue;
+    if (!isUtf8(bytes.subarray(start, at))) return start;
+    start = at + 1;
   }
+  return start;
 }
 
 function lineBreaksBefore(bytes: Buffer, end: number): number {

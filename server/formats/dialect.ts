@@ -12,6 +12,9 @@ type Row = string[] | null;
 const DELIMITERS: readonly TextDialect['delimiter'][] = ['\t', ';', '|', ',', 'spaces'];
 const COMMENT_PREFIXES = ['#', '//', '%', '--'] as const;
 const SAMPLE_ROWS = 200;
+const SAMPLE_LENGTH = 512 * 1024;
+/** No number and no angle is longer. */
+const MAX_VALUE_LENGTH = 60;
 const COMMENT_LOOK_LINES = 1000;
 /** Rows that agree on the number of cells before a sign is taken for the delimiter. */
 const MIN_AGREEMENT = 0.6;
@@ -62,6 +65,14 @@ interface Candidate {
   rows: Row[];
 }
 
+interface Score {
+  /** Cells in most rows, and the share of rows that have so many. */
+  width: number;
+  agreement: number;
+  /** Larger is better. */
+  rank: number;
+}
+
 function guessDelimiter(
   lines: readonly string[],
   commentPrefix: string | null,
@@ -74,7 +85,7 @@ function guessDelimiter(
   if (known.delimiter !== undefined && only !== undefined) return only;
   const scored = tried
     .map((candidate) => ({ candidate, score: scoreOf(candidate) }))
-    .filter(({ score }) => score.width > 1 && score.agreement >= MIN_AGREEMENT);
+    .filter(({ candidate, score }) => isPossible(candidate, score));
   const visible = scored.filter(({ candidate }) => candidate.delimiter !== 'spaces');
   const best = (visible.length > 0 ? visible : scored).sort((a, b) => b.score.rank - a.score.rank)[0]
     ?.candidate;
@@ -82,6 +93,12 @@ function guessDelimiter(
     return readCandidate(lines, ',', commentPrefix, known.quoted);
   }
   return best;
+}
+
+/** Blanks also stand inside of names: they separate cells only when the first row has several, too. */
+function isPossible({ delimiter, rows }: Candidate, { width, agreement }: Score): boolean {
+  const firstWidth = rows[0]?.length ?? 0;
+  return width > 1 && agreement >= MIN_AGREEMENT && (delimiter !== 'spaces' || firstWidth > 1);
 }
 
 function readCandidate(
@@ -113,14 +130,17 @@ function sampleRows(
     commentPrefix,
     decimalComma: false,
   });
-  for (let at = 0; at < lines.length && reader.size < SAMPLE_ROWS; at += SAMPLE_ROWS) {
-    reader.push({ firstLine: at + 1, lines: lines.slice(at, at + SAMPLE_ROWS), quotes: true });
+  let length = 0;
+  for (let i = 0; i < lines.length && reader.size < SAMPLE_ROWS && length < SAMPLE_LENGTH; i += 1) {
+    const line = lines[i] ?? '';
+    length += line.length;
+    reader.push({ firstLine: i + 1, lines: [line], quotes: true });
   }
   return reader.take().cells.slice(0, SAMPLE_ROWS);
 }
 
 /** How well a delimiter fits: rows of equal width, the first of them too, and cells that are numbers or angles. */
-function scoreOf({ rows }: Candidate): { width: number; agreement: number; rank: number } {
+function scoreOf({ rows }: Candidate): Score {
   const widths = rows.map((row) => (row === null ? 0 : widthOf(row)));
   const width = mostFrequent(widths);
   const agreement = rows.length === 0 ? 0 : widths.filter((other) => other === width).length / rows.length;
@@ -145,6 +165,7 @@ export function mostFrequent(numbers: readonly number[]): number {
 
 /** True for a number, with point or comma, or a sexagesimal angle. */
 function isValue(cell: string): boolean {
+  if (cell.length > MAX_VALUE_LENGTH) return false;
   if (!Number.isNaN(readNumber(cell, true) ?? NaN)) return true;
   const angle = readSexagesimal(cell, { decimalComma: true });
   return angle.ok && angle.fields > 1;
@@ -186,6 +207,7 @@ function hasDecimalComma(rows: readonly Row[]): boolean {
   let commas = 0;
   let points = 0;
   for (const cell of rows.flatMap((row) => row ?? [])) {
+    if (cell.length > MAX_VALUE_LENGTH) continue;
     if (/^\s*[+\-−–]?[\d :]*\d,\d+\s*$/.test(cell)) commas += 1;
     else if (/^\s*[+\-−–]?[\d :]*\d\.\d+\s*$/.test(cell)) points += 1;
   }

@@ -37,9 +37,8 @@ export async function readHead(openStream: () => Readable, options: HeadOptions)
   const compression = known.compression ?? (isGzip(first.bytes) ? 'gzip' : 'none');
   const head = await readStart(unpackedChunks(openStream(), compression, options), HEAD_BYTES);
   refuseNoText(head.bytes);
-  const bytes = head.whole ? head.bytes : head.bytes.subarray(0, lastLineEnd(head.bytes));
-  const encoding = known.encoding ?? guessEncoding(bytes);
-  const lines = linesOf(bytes, encoding, head.whole);
+  const encoding = known.encoding ?? guessEncoding(head.bytes);
+  const lines = linesOf(head.bytes, encoding, head.whole);
   if (lines.every((line) => line.trim() === '')) throw emptyFile('The file holds nothing but blanks.');
   return { compression, encoding, lines, whole: head.whole };
 }
@@ -73,11 +72,7 @@ function isGzip(bytes: Buffer): boolean {
   return bytes[0] === 0x1f && bytes[1] === 0x8b;
 }
 
-function lastLineEnd(bytes: Buffer): number {
-  const end = Math.max(bytes.lastIndexOf(10), bytes.lastIndexOf(13));
-  return end < 0 ? bytes.length : end + 1;
-}
-
+/** All lines, or the complete ones when the bytes are only the beginning of a file. */
 function linesOf(bytes: Buffer, encoding: TextDialect['encoding'], whole: boolean): string[] {
   const text = new TextReader(encoding);
   const splitter = new LineSplitter();

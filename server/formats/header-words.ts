@@ -34,6 +34,9 @@ export interface HeaderMeaning {
   is1950: boolean;
 }
 
+/** What is longer is a sentence; the patterns below are for words. */
+const MAX_HEADER_LENGTH = 80;
+
 const ERROR_WORD = '(?:e|err|error|errors|sigma|sig|unc|uncertainty|std|rms)';
 const ERROR_FIRST = new RegExp(`^${ERROR_WORD}[\\s_.]+(?:of[\\s_.]+)?(.+)$`, 'i');
 const ERROR_LAST = new RegExp(`^(.+?)[\\s_.]+${ERROR_WORD}$`, 'i');
@@ -54,7 +57,7 @@ const ROLES: readonly (readonly [HeaderRole, RegExp])[] = [
   ['velocity', /^(?:rv|vr|vrad|radvel|radialvelocity|cz|hrv|vhel|vhelio|vlsr|velocity|vel|rvel)$/],
   [
     'no-name',
-    /type|class|spt|morph|note|remark|comment|^refs?$|bib|flag|qual|date|epoch|const|filter|survey|tele|instr|code/,
+    /type|class|^sp$|spt|morph|note|remark|comment|^refs?$|bib|flag|qual|date|epoch|const|filter|survey|tele|instr|code/,
   ],
   [
     'name',

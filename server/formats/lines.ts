@@ -3,6 +3,8 @@ import { UnreadableFile } from './unreadable-file';
 /** Longest line that is read, in characters; a table of sources has lines of some hundred. */
 export const MAX_LINE_LENGTH = 1024 * 1024;
 
+const LINE_FEED = 10;
+
 export interface LineBlock {
   /** Number of the first of the lines in the file, counted from 1. */
   firstLine: number;
@@ -16,6 +18,11 @@ export class LineSplitter {
   private rest = '';
   /** Number of the line that comes next, counted from 1. */
   line = 1;
+
+  /** Number of the line in which the next bytes of the file begin: a CR that was held back has ended a line, unless LF follows. */
+  lineOfNext(bytes: Buffer): number {
+    return this.rest.endsWith('\r') && bytes[0] !== LINE_FEED ? this.line + 1 : this.line;
+  }
 
   /** The lines that are complete with this text. Throws UnreadableFile 'file-row-too-long'. */
   push(text: string): LineBlock {

@@ -2,7 +2,7 @@ import { Readable } from 'node:stream';
 import { gzipSync } from 'node:zlib';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { allRows, COMMA, LIMITS, opener } from './fixtures/streams';
+import { allRows, COMMA, LIMITS } from './fixtures/streams';
 import { readRows } from './rows';
 
 const cellsOf = async (...args: Parameters<typeof allRows>) =>

@@ -7,6 +7,7 @@ import { unpackedChunks, type UnpackLimits } from './unpack';
 
 /** Rows are handed on when at least so many wait: enough to make the cost of a turn small, few enough to be small. */
 const BATCH_ROWS = 1000;
+const NOTHING = Buffer.alloc(0);
 
 /**
  * The data rows of a stored file in batches of about 1,000, at constant memory; the next part is read when the batch
@@ -22,10 +23,10 @@ export async function* readRows(
   const lines = new LineSplitter();
   const records = new RecordReader(dialect);
   for await (const bytes of unpackedChunks(source, dialect.compression, limits)) {
-    records.push(lines.push(text.push(bytes, lines.line)));
+    records.push(lines.push(text.push(bytes, lines.lineOfNext(bytes))));
     if (records.size >= BATCH_ROWS) yield records.take();
   }
-  records.push(lines.push(text.end(lines.line)));
+  records.push(lines.push(text.end(lines.lineOfNext(NOTHING))));
   records.push(lines.end());
   records.end();
   if (records.size > 0) yield records.take();

@@ -40,7 +40,7 @@ function isNameColumn({ profile, header }: ReadColumn): boolean {
   return (
     designations >= DESIGNATION_SHARE * profile.values.length &&
     profile.values.length >= MIN_FILLED_SHARE * profile.rows &&
-    profile.distinctShare >= MIN_DISTINCT_SHARE
+    profile.distinctShare > MIN_DISTINCT_SHARE
   );
 }
 

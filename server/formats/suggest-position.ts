@@ -2,6 +2,7 @@ import { parseDec, parseRa, splitCombinedPosition } from '../../shared/astro/ang
 import type { ColumnMapping } from '../../shared/schemas/mapping';
 import { rangeOf, type ColumnProfile } from './column-profile';
 import type { HeaderMeaning } from './header-words';
+import { MAX_COMBINED_LENGTH } from './understand-position';
 
 type Position = ColumnMapping['position'];
 
@@ -107,7 +108,9 @@ function oneColumn(columns: readonly ReadColumn[], { decimalComma }: SuggestCont
     if (profile.kind !== 'text') continue;
     const parts = profile.values
       .slice(0, COMBINED_SAMPLE)
-      .map((value) => splitCombinedPosition(value, { decimalComma }));
+      .map((value) =>
+        value.length > MAX_COMBINED_LENGTH ? null : splitCombinedPosition(value, { decimalComma }),
+      );
     for (const [raNotation, decNotation] of [
       ['degrees', 'degrees'],
       ['sexagesimal-hours', 'sexagesimal-degrees'],

@@ -15,6 +15,8 @@ type Unread = Extract<AngleResult, { ok: false }>;
 type ReadAngle = (text: string) => number | Unread;
 
 const MAX_MESSAGE_LENGTH = 400;
+/** A right ascension and a declination in one cell are shorter, however they are written. */
+export const MAX_COMBINED_LENGTH = 100;
 
 /** The step that reads RA and Dec, both in degrees, RA 0 <= ra < 360. */
 export function compilePosition(position: Position, shape: TableShape): Step {
@@ -48,7 +50,7 @@ function oneColumn(
     if (hasNoValue(text)) {
       return { code: 'no-position', column, message: `${inColumn(column, shape)}: the cell has no value.` };
     }
-    const parts = splitCombinedPosition(text, options);
+    const parts = text.length > MAX_COMBINED_LENGTH ? null : splitCombinedPosition(text, options);
     if (parts === null) {
       const message = `${inColumn(column, shape)}: “${shownCell(text)}” can’t be cut into a right ascension and a declination.`;
       return { code: 'unreadable-angle', column, message };

@@ -1,5 +1,5 @@
 import { randomBytes } from 'node:crypto';
-import { chmodSync, existsSync, mkdirSync, writeFileSync } from 'node:fs';
+import { chmodSync, existsSync, mkdirSync, statSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { startCluster, type Cluster } from '../../db/cluster';
 import { takeLock, type LockHolder, type ProcessLock } from '../../db/cluster-lock';
@@ -9,6 +9,7 @@ import { PROJECT_ROOT } from './project';
 import { say, StartProblem } from './say';
 
 const DATABASE = 'idem';
+const SECRET_FILE = 'session-secret';
 const LEFTOVER_GRACE_MS = 1000;
 /** Written into the lock at the end; a new start waits that long for it to be given back. */
 const STOPPING = 'stopping';
@@ -23,6 +24,7 @@ export function dataDirOf(env: NodeJS.ProcessEnv): string {
 
 /** Makes the data folder and takes it for this process; a second starter is told where the first one runs. */
 export async function claimDataDir(life: Life, dataDir: string): Promise<ProcessLock> {
+  requireOwnInstallation(dataDir);
   try {
     mkdirSync(path.join(dataDir, 'files'), { recursive: true, mode: 0o700 });
     mkdirSync(path.join(dataDir, 'logs'), { recursive: true, mode: 0o700 });
@@ -41,6 +43,19 @@ export async function claimDataDir(life: Life, dataDir: string): Promise<Process
   life.signal.addEventListener('abort', () => lock.write(STOPPING));
   await endLeftovers(dataDir);
   return lock;
+}
+
+/** Two accounts on one installation would leave files that the other cannot read; root is no exception. */
+function requireOwnInstallation(dataDir: string): void {
+  const secret = path.join(dataDir, SECRET_FILE);
+  const own = process.getuid?.();
+  if (own === undefined || !existsSync(secret)) return;
+  const { uid } = statSync(secret);
+  if (uid === own) return;
+  throw new StartProblem(
+    `The installation in ${dataDir} belongs to account number ${uid}, and this is number ${own}. ` +
+      'Start Idem as the account that made it, or name another folder in IDEM_DATA_DIR.',
+  );
 }
 
 function alreadyRuns({ pid, note }: LockHolder, dataDir: string): string {
@@ -139,7 +154,7 @@ export function programEnvironment(
 
 /** The key that signs sessions, made on the first start. */
 function sessionSecretFile(dataDir: string): string {
-  const file = path.join(dataDir, 'session-secret');
+  const file = path.join(dataDir, SECRET_FILE);
   if (!existsSync(file)) writeFileSync(file, `${randomBytes(32).toString('hex')}\n`, { mode: 0o600 });
   chmodSync(file, 0o600);
   return file;

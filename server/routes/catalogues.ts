@@ -6,6 +6,7 @@ import {
   catalogueDetail,
   catalogueLabel,
   catalogueList,
+  citationList,
   coverage,
   newCatalogue,
   setAsidePage,
@@ -22,6 +23,14 @@ const CATALOGUES = '/api/groups/:group/catalogues';
 const catalogueParams = groupParams({ label: catalogueLabel });
 
 export const catalogueRoutes: Route[] = [
+  groupRoute({
+    role: 'reader',
+    method: 'get',
+    path: '/api/groups/:group/citations',
+    summary: 'What work with the catalogues has to cite',
+    answer: citationList,
+    run: async ({ context, actor }) => ({ items: await catalogues.listCitations(context, actor) }),
+  }),
   groupRoute({
     role: 'reader',
     method: 'get',

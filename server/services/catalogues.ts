@@ -3,7 +3,7 @@ import { inTransaction, type Tx } from '../../db/client';
 import { catalogue, catalogueRevision, setAsideRow, storedFile } from '../../db/schema/catalogue';
 import { researchGroup } from '../../db/schema/group';
 import { person } from '../../db/schema/person';
-import type { CatalogueDetail, CatalogueSummary, Coverage, NewCatalogue } from '../../shared/schemas/catalogue';
+import type { CatalogueCitation, CatalogueDetail, CatalogueSummary, Coverage, NewCatalogue } from '../../shared/schemas/catalogue';
 import type { ColumnMapping, SetAsideRow } from '../../shared/schemas/mapping';
 import { setAsideCode } from '../../shared/schemas/mapping';
 import type { Context, GroupActor } from '../context';
@@ -188,6 +188,18 @@ export async function changeCatalogue(
     if (Object.keys(change).length === 0) return;
     await tx.update(catalogue).set(change).where(eq(catalogue.id, row.catalogue.id));
     await recordEvent(tx, actor, 'catalogue described', `catalogue ${row.catalogue.label}`, change);
+  });
+}
+
+/** The citation of every catalogue, with the number of live objects that have a source in it. */
+export async function listCitations(context: Context, actor: GroupActor): Promise<CatalogueCitation[]> {
+  return inTransaction(context.database, actor, async (tx) => {
+    const { rows } = await tx.execute<CatalogueCitation & Record<string, unknown>>(sql`
+      select c.label, c.title, c.ordinal, c.citation, (
+        select count(distinct coalesce(o.merged_into, o.id)) from entry e join object o on o.id = e.id
+        where e.catalogue_id = c.id) as objects
+      from catalogue c where c.group_id = ${actor.groupId} order by c.ordinal`);
+    return rows;
   });
 }
 

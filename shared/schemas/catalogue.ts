@@ -119,3 +119,14 @@ export const sourceQuery = pageQuery.extend({
 });
 
 export const setAsidePage = pageOf(setAsideRow);
+
+/** A catalogue's citation and how many live objects have a source in it. */
+export const catalogueCitation = z.strictObject({
+  label: catalogueLabel,
+  title: z.string(),
+  ordinal: z.number().int(),
+  citation: z.string(),
+  objects: z.number().int(),
+});
+export type CatalogueCitation = z.infer<typeof catalogueCitation>;
+export const citationList = z.strictObject({ items: z.array(catalogueCitation) });

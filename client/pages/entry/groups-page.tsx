@@ -13,7 +13,10 @@ export function GroupsPage() {
       title="Choose a group"
       beside={
         <>
-          <p>Each group has its own catalogues, verdicts and objects. You can change the group at any time in the top bar.</p>
+          <p>
+            Each group has its own catalogues, verdicts and objects. You can change the group at any time in
+            the top bar.
+          </p>
           <p>{person === null ? null : `Signed in as ${person.name}.`}</p>
         </>
       }

@@ -21,8 +21,8 @@ export function SetUpPage() {
         <>
           <p>There is no account here yet. The first one owns the first group and can add everybody else.</p>
           <p>
-            A group shares its catalogues, verdicts and objects. Nothing of it is visible to other groups on this
-            server.
+            A group shares its catalogues, verdicts and objects. Nothing of it is visible to other groups on
+            this server.
           </p>
         </>
       }

@@ -14,10 +14,13 @@ export function SignInPage() {
       beside={
         <>
           <p>
-            Idem keeps one record per object for a research group: under every name, from every catalogue, with the
-            reason for each identity.
+            Idem keeps one record per object for a research group: under every name, from every catalogue,
+            with the reason for each identity.
           </p>
-          <p>Accounts are made by the owner of your group. Ask there when you have none, or forgot your password.</p>
+          <p>
+            Accounts are made by the owner of your group. Ask there when you have none, or forgot your
+            password.
+          </p>
         </>
       }
     >
