@@ -19,6 +19,7 @@ export default defineConfig({
           name: 'unit',
           include: ['{shared,server,client,db,seed}/**/*.test.{ts,tsx}'],
           environment: 'node',
+          testTimeout: 60_000,
         },
       },
       {

@@ -12,7 +12,7 @@ import { Shell } from './components/shell';
 
 /** Pages below /g/:group, each loaded when it is first opened. */
 const groupPages: RouteObject[] = [
-  { index: true, loader: ({ params }) => redirect(`/g/${params.group ?? ''}/today`) },
+  { index: true, loader: ({ params }) => redirect(`/g/${params.group ?? ''}/today`), Component: Loading },
   { path: 'today', lazy: async () => ({ Component: (await import('./pages/today/today-page')).TodayPage }) },
   {
     path: 'catalogues',
@@ -73,7 +73,7 @@ export const router = createBrowserRouter([
     ErrorBoundary: RouteProblem,
     HydrateFallback: () => <Loading label="Opening Idem" />,
     children: [
-      { path: '/', loader: toFirstAddress },
+      { path: '/', loader: toFirstAddress, Component: Loading },
       {
         path: '/sign-in',
         loader: needsNobody,

@@ -13,6 +13,7 @@ import {
 } from 'node:fs';
 import path from 'node:path';
 import type { Account } from './cluster-command';
+import { ClusterProblem } from './cluster-problem';
 
 /** Where a cluster lives and as whom its server runs. */
 export interface ClusterHome {
@@ -40,7 +41,7 @@ export function prepareHome(dataDir: string): ClusterHome {
   let folder = remembered;
   if (account !== null && !canReach(dataDir, remembered, account)) {
     if (existsSync(path.join(remembered, 'data'))) {
-      throw new Error(
+      throw new ClusterProblem(
         `The account ${account.name} can no longer enter ${remembered}: make the folders above it enterable.`,
       );
     }
@@ -67,7 +68,7 @@ function serverAccount(data: string): Account {
   const uid = number('-u');
   const gid = number('-g');
   if (uid === null || gid === null) {
-    throw new Error(
+    throw new ClusterProblem(
       'There is no account "postgres", and PostgreSQL refuses to run as root. Type: adduser --system --group postgres',
     );
   }
@@ -95,7 +96,7 @@ function ownFolder(folder: string, account: Account): void {
     !found.isDirectory() ||
     (wantedUid !== undefined && found.uid !== wantedUid && found.uid !== process.getuid?.())
   ) {
-    throw new Error(
+    throw new ClusterProblem(
       `${folder} belongs to another account (number ${found.uid}): start Idem as that account or as root, or name another folder in IDEM_DATA_DIR.`,
     );
   }
@@ -108,7 +109,7 @@ function readPasswords(folder: string): ClusterHome['passwords'] {
   const file = path.join(folder, 'passwords.json');
   if (!existsSync(file)) {
     if (existsSync(path.join(folder, 'data')))
-      throw new Error(`${file} is missing; without it nobody can sign in to the database.`);
+      throw new ClusterProblem(`${file} is missing; without it nobody can sign in to the database.`);
     const fresh = { admin: randomBytes(24).toString('hex'), owner: randomBytes(24).toString('hex') };
     // Flushed: after a power cut the cluster is there, so the passwords must be.
     writeFileSync(file, JSON.stringify(fresh), { mode: 0o600, flush: true });
@@ -117,7 +118,7 @@ function readPasswords(folder: string): ClusterHome['passwords'] {
   const value: unknown = JSON.parse(readFileSync(file, 'utf8'));
   const { admin, owner } = value as Partial<Record<'admin' | 'owner', unknown>>;
   if (typeof admin !== 'string' || typeof owner !== 'string')
-    throw new Error(`${file} does not hold the two passwords.`);
+    throw new ClusterProblem(`${file} does not hold the two passwords.`);
   return { admin, owner };
 }
 

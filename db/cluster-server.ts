@@ -15,6 +15,7 @@ import pg from 'pg';
 import { boundCommand } from './cluster-command';
 import { withPasswordFile, type ClusterHome } from './cluster-home';
 import { commandLineOf, endProcesses, postgresProcessesIn, signal, waitUntil } from './cluster-processes';
+import { ClusterProblem } from './cluster-problem';
 import { initArguments, serverArguments, type ClusterSettings } from './cluster-settings';
 
 const STOP_LIMIT_MS = 30_000;
@@ -99,7 +100,7 @@ async function runToEnd(command: string, args: string[], options: object): Promi
     child.once('close', resolve);
   });
   if (code !== 0)
-    throw new Error(
+    throw new ClusterProblem(
       `The database could not be set up (${path.basename(command)} ended with ${code}):\n${output}`,
     );
 }
@@ -118,7 +119,9 @@ export async function launchServer(
     await server.stop();
     // Somebody else may have taken the port between our look and the server's start: look again.
     if (attempt >= tries)
-      throw new Error(`PostgreSQL did not start. The end of ${options.logFile}:\n${tailOf(options.logFile)}`);
+      throw new ClusterProblem(
+        `PostgreSQL did not start. The end of ${options.logFile}:\n${tailOf(options.logFile)}`,
+      );
   }
 }
 

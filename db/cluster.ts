@@ -4,6 +4,7 @@ import pg from 'pg';
 import { findPostgres, MINIMUM_MAJOR } from './cluster-binaries.mjs';
 import { prepareHome, type ClusterHome } from './cluster-home';
 import { lockHolder, takeLock, type ProcessLock } from './cluster-lock';
+import { ClusterProblem } from './cluster-problem';
 import {
   adminUrlOf,
   answers,
@@ -95,7 +96,7 @@ function binariesFor(home: ClusterHome): string {
   const major = existsSync(versionFile) ? Number(readFileSync(versionFile, 'utf8')) : undefined;
   const found = findPostgres(major);
   if (found !== null) return found.binDir;
-  throw new Error(
+  throw new ClusterProblem(
     major === undefined
       ? `PostgreSQL ${MINIMUM_MAJOR} or newer is not installed.`
       : `${home.data} was made by PostgreSQL ${major}, which is not installed. Install postgresql-${major}, or move the data to the new version with pg_upgrade.`,
@@ -112,7 +113,7 @@ async function portOfOther(home: ClusterHome, lockFile: string): Promise<number 
       return Number(holder.note);
     await new Promise((resolve) => setTimeout(resolve, 50));
   }
-  throw new Error(
+  throw new ClusterProblem(
     `Process ${lockHolder(lockFile)?.pid} holds ${lockFile}, but its database does not answer.`,
   );
 }

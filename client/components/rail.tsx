@@ -1,11 +1,25 @@
-import { NavLink } from 'react-router-dom';
+import { Link, NavLink } from 'react-router-dom';
 import { classNames } from './class-names';
 import { PLACES } from './places';
 
 /** The list of places; the chosen one carries the same mark as a limit on the ruler. */
-export function Rail({ group, onChoose }: { group: string; onChoose?: () => void }) {
+export function Rail({
+  group,
+  onChoose,
+  withName = false,
+}: {
+  group: string;
+  onChoose?: () => void;
+  /** Begins with the name of the application. */
+  withName?: boolean;
+}) {
   return (
-    <nav aria-label="Places">
+    <nav aria-label="Places" className="grid gap-4">
+      {withName && (
+        <Link to={`/g/${group}/today`} className="pl-[1.1875rem] text-lg font-bold text-ink no-underline">
+          Idem
+        </Link>
+      )}
       <ul className="grid">
         {PLACES.map(({ path, name }) => (
           <li key={path}>

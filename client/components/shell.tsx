@@ -1,5 +1,5 @@
 import { useEffect, useRef, useState, type RefObject } from 'react';
-import { Link, Outlet, ScrollRestoration, useLocation, useNavigation } from 'react-router-dom';
+import { Outlet, ScrollRestoration, useLocation, useNavigation } from 'react-router-dom';
 import { useSession } from '../api/session';
 import { useGroup } from '../api/use-group';
 import { AccountMenu } from './account-menu';
@@ -29,9 +29,8 @@ export function Shell() {
         Skip to the content
       </a>
       <div className="screen-only hidden border-r border-rule wide:block">
-        <div className="sticky top-0 grid gap-5 py-4">
-          <Wordmark group={group.slug} />
-          <Rail group={group.slug} />
+        <div className="sticky top-0 py-4">
+          <Rail group={group.slug} withName />
         </div>
       </div>
       <div className="min-w-0">
@@ -48,14 +47,6 @@ export function Shell() {
       <KeysDialog open={keysOpen} onClose={() => setKeysOpen(false)} />
       <ScrollRestoration />
     </div>
-  );
-}
-
-function Wordmark({ group }: { group: string }) {
-  return (
-    <Link to={`/g/${group}/today`} className="px-4 text-lg font-bold text-ink no-underline">
-      Idem
-    </Link>
   );
 }
 

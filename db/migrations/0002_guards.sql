@@ -7,7 +7,7 @@ CREATE FUNCTION current_person() RETURNS integer LANGUAGE sql STABLE
 --> statement-breakpoint
 -- The number in a cell as written: decimal point or comma, NULL for anything that is not a number.
 CREATE FUNCTION cell_number(cell text) RETURNS double precision LANGUAGE sql IMMUTABLE PARALLEL SAFE
-  AS $$ SELECT CASE WHEN cell ~ '^\s*[-+]?(\d{1,300}([.,]\d*)?|[.,]\d+)([eE][-+]?\d{1,2})?\s*$'
+  AS $$ SELECT CASE WHEN cell ~ '^\s*[-+]?(\d{1,200}([.,]\d*)?|[.,]\d+)([eE][-+]?\d{1,2})?\s*$'
                THEN replace(cell, ',', '.')::double precision END $$;
 --> statement-breakpoint
 -- Second lock: every table that carries group_id shows and takes only rows of the acting group.

@@ -22,7 +22,7 @@ export function ensureDependencies(root) {
   const hash = createHash('sha256').update(lockText).digest('hex');
   if (readIfThere(stampFile) === hash) return;
   if (!matchesInstalled(root, lockText)) {
-    say('Installing dependencies from package-lock.json (about half a minute) …');
+    say('Installing dependencies from package-lock.json (once, up to a minute) …');
     npmCi(root);
   }
   writeFileSync(stampFile, hash);

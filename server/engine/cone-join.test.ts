@@ -73,7 +73,7 @@ describe(`coneJoin against every row with every row (seed ${SEED})`, () => {
   );
 
   it.each(SKIES)('%s, many rows: several buckets', (sky) => {
-    const { a, b } = samplePair(sky, 25_000, 3, SEED);
+    const { a, b } = samplePair(sky, 20_000, 3, SEED);
     expectSamePairs(coneJoin(a, b, 2), bruteForce(a, b, 2));
   });
 
@@ -162,10 +162,10 @@ describe('coneJoin with unusual input', () => {
   });
 
   it('many rows at one place all pair, up to the limit', () => {
-    const a = { raDeg: new Float64Array(700).fill(123.4), decDeg: new Float64Array(700).fill(-56.7) };
-    expect(coneJoin(a, a, 0.0001).a).toHaveLength(490_000);
-    expect(() => coneJoin(a, a, 0.0001, { maxPairs: 489_999 })).toThrow(TooManyPairs);
-    expect(coneJoin(a, a, 0.0001, { maxPairs: 490_000 }).a).toHaveLength(490_000);
+    const a = { raDeg: new Float64Array(300).fill(123.4), decDeg: new Float64Array(300).fill(-56.7) };
+    expect(coneJoin(a, a, 0.0001).a).toHaveLength(90_000);
+    expect(() => coneJoin(a, a, 0.0001, { maxPairs: 89_999 })).toThrow(TooManyPairs);
+    expect(coneJoin(a, a, 0.0001, { maxPairs: 90_000 }).a).toHaveLength(90_000);
   });
 
   it('says how many pairs it had reached', () => {

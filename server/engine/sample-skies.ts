@@ -33,9 +33,9 @@ export const SAMPLE_BANDS = {
   'south pole': [{ decFrom: -90, decTo: -89.5, raFrom: 0, raWidth: 360 }],
   'RA 0 strip': [{ decFrom: -60, decTo: 60, raFrom: 359.95, raWidth: 0.1 }],
   'clumps in an empty sky': [
-    { decFrom: 20, decTo: 20.02, raFrom: 40, raWidth: 0.02 },
+    { decFrom: 20, decTo: 20.1, raFrom: 40, raWidth: 0.1 },
     { decFrom: -90, decTo: 90, raFrom: 0, raWidth: 360 },
-    { decFrom: -89.999, decTo: -89.99, raFrom: 300, raWidth: 90 },
+    { decFrom: -89.999, decTo: -89.97, raFrom: 300, raWidth: 90 },
   ],
 } satisfies Record<string, Band[]>;
 export type SampleSky = keyof typeof SAMPLE_BANDS;

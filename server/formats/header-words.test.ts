@@ -98,4 +98,10 @@ describe('header words', () => {
     expect(readHeader('RAB1950').is1950).toBe(true);
     expect(readHeader('RAJ2000').is1950).toBe(false);
   });
+
+  it('a text longer than any header word is none, and is not searched', () => {
+    for (const text of [' _.'.repeat(100_000), `${'['.repeat(100_000)}x`, 'mag'.repeat(100_000)]) {
+      expect(readHeader(text)).toMatchObject({ role: null, unit: null });
+    }
+  });
 });

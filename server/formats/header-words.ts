@@ -84,7 +84,7 @@ const FLUX: readonly RegExp[] = [
 
 /** Reads a header cell: 'RA [deg]', 'e_RAJ2000', 'pmRA (mas/yr)', 'Vmag', 'flux_1400', 'pos_err_95', … */
 export function readHeader(text: string): HeaderMeaning {
-  const { word, unit } = readHeaderUnit(text);
+  const { word, unit } = text.length > MAX_HEADER_LENGTH ? { word: '', unit: null } : readHeaderUnit(text);
   const meaning: HeaderMeaning = {
     role: null,
     isError: false,

@@ -96,9 +96,19 @@ export async function openDatabaseOf(life: Life, dataDir: string, env: NodeJS.Pr
   const ownerUrl = env.IDEM_DATABASE_URL || (await ownCluster(life, dataDir));
   life.signal.throwIfAborted();
   const { migrate } = await loading;
-  const { appUrl } = await migrate(ownerUrl);
-  life.signal.throwIfAborted();
-  return appUrl;
+  try {
+    return (await migrate(ownerUrl)).appUrl;
+  } catch (error) {
+    if (!env.IDEM_DATABASE_URL) throw error;
+    throw new StartProblem(`The database that IDEM_DATABASE_URL names cannot be used: ${reasonOf(error)}`);
+  }
+}
+
+/** Failed connections come as an AggregateError, whose own message is empty. */
+function reasonOf(error: unknown): string {
+  if (error instanceof AggregateError) return error.errors.map(reasonOf).join('; ');
+  if (!(error instanceof Error)) return String(error);
+  return error.cause === undefined ? error.message : `${error.message}: ${reasonOf(error.cause)}`;
 }
 
 async function ownCluster(life: Life, dataDir: string): Promise<string> {

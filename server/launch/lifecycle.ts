@@ -1,3 +1,4 @@
+import { ClusterProblem } from '../../db/cluster-problem';
 import { say, StartProblem } from './say';
 
 /** What the parts of a running installation share: when to stop, and what to undo then. */
@@ -63,6 +64,6 @@ async function settled(started: Promise<void>): Promise<void> {
 }
 
 function tell(problem: unknown): void {
-  if (problem instanceof StartProblem) say(problem.message);
+  if (problem instanceof StartProblem || problem instanceof ClusterProblem) say(problem.message);
   else say(problem instanceof Error ? (problem.stack ?? problem.message) : String(problem));
 }

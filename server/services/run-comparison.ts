@@ -47,7 +47,10 @@ export async function compare(
     }
   } catch (error) {
     if (!(error instanceof TooManyPairs)) throw error;
-    refuse('too-many-pairs', `${a.label} and ${b.label} have more than ${maxPairs} pairs within ${radiusArcsec} arcsec.`);
+    refuse(
+      'too-many-pairs',
+      `${a.label} and ${b.label} have more than ${maxPairs} pairs within ${radiusArcsec} arcsec.`,
+    );
   }
   const pairs = concatPairs(parts);
   return {
@@ -77,14 +80,20 @@ export function pairStatisticsOf({ a, b, pairs, ranks }: Comparison, radiusArcse
     candidates: pairs.a.length,
     mutualBest: best.length,
     crowded,
-    sourcesAWithCandidate: new Set(pairs.a).size,
-    sourcesBWithCandidate: new Set(pairs.b).size,
+    sourcesAWithCandidate: countDistinct(pairs.a, a.positions.rowCount),
+    sourcesBWithCandidate: countDistinct(pairs.b, b.positions.rowCount),
     medianSepArcsec: median(Float64Array.from(best, (i) => pairs.sepArcsec[i] ?? NaN)),
     medianOffsetEastArcsec: median(offsets.east),
     medianOffsetNorthArcsec: median(offsets.north),
     chancePairs: chance.reduce((sum, pairsInBin) => sum + pairsInBin, 0),
     histogram: { edgesArcsec: [...edges], counts: [...separationHistogram(pairs.sepArcsec, edges)], chance },
   };
+}
+
+function countDistinct(rows: Uint32Array, rowCount: number): number {
+  const seen = new Uint8Array(rowCount);
+  for (const row of rows) seen[row] = 1;
+  return seen.reduce((sum, isSeen) => sum + isSeen, 0);
 }
 
 function mutualBestPairs({ mutualBest }: PairRanks): Uint32Array {

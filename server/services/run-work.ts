@@ -115,7 +115,15 @@ function bySeparation(comparisons: readonly Comparison[]): (index: number, row: 
       order[at] = at;
     }
   });
-  order.sort((x, y) => (sepArcsec[x] ?? NaN) - (sepArcsec[y] ?? NaN) || x - y);
+  const rowOf = (place: number, side: 'a' | 'b') =>
+    comparisons[comparisonOf[place] ?? 0]?.pairs[side][pairOf[place] ?? 0] ?? 0;
+  order.sort(
+    (x, y) =>
+      (sepArcsec[x] ?? NaN) - (sepArcsec[y] ?? NaN) ||
+      (comparisonOf[x] ?? 0) - (comparisonOf[y] ?? 0) ||
+      rowOf(x, 'a') - rowOf(y, 'a') ||
+      rowOf(x, 'b') - rowOf(y, 'b'),
+  );
   return (index, row) => {
     const place = order[index] ?? 0;
     const comparison = comparisons[comparisonOf[place] ?? 0];

@@ -66,14 +66,18 @@ function haversineDeg(deg: number): number {
  * Error below 1e-9 arcsec everywhere. Source: spherical trigonometry (methods handbook, section 1).
  */
 export function separationArcsec(ra1Deg: number, dec1Deg: number, ra2Deg: number, dec2Deg: number): number {
-  const h =
-    haversineDeg(dec2Deg - dec1Deg) +
-    cosDeg(dec1Deg) * cosDeg(dec2Deg) * haversineDeg(raDifferenceDeg(ra1Deg, ra2Deg));
+  const dRaDeg = raDifferenceDeg(ra1Deg, ra2Deg);
+  const h = haversineDeg(dec2Deg - dec1Deg) + cosDeg(dec1Deg) * cosDeg(dec2Deg) * haversineDeg(dRaDeg);
   if (h <= HAVERSINE_OF_170_DEG) return 2 * Math.asin(Math.sqrt(h)) * ARCSEC_PER_RAD;
-  return wideSeparationArcsec(unitVector(ra1Deg, dec1Deg), unitVector(ra2Deg, dec2Deg));
+  // The southern position first: the result is then bit for bit the same in both directions.
+  return dec1Deg <= dec2Deg
+    ? wideSeparationArcsec(dec1Deg, dec2Deg, Math.abs(dRaDeg))
+    : wideSeparationArcsec(dec2Deg, dec1Deg, Math.abs(dRaDeg));
 }
 
-function wideSeparationArcsec(a: Vector3, b: Vector3): number {
+function wideSeparationArcsec(dec1Deg: number, dec2Deg: number, dRaDeg: number): number {
+  const a = unitVector(0, dec1Deg);
+  const b = unitVector(dRaDeg, dec2Deg);
   const cross = Math.hypot(a[1] * b[2] - a[2] * b[1], a[2] * b[0] - a[0] * b[2], a[0] * b[1] - a[1] * b[0]);
   return Math.atan2(cross, a[0] * b[0] + a[1] * b[1] + a[2] * b[2]) * ARCSEC_PER_RAD;
 }

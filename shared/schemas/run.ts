@@ -46,6 +46,7 @@ export const pairStatistics = z.strictObject({
   crowded: z.number().int(),
   sourcesAWithCandidate: z.number().int(),
   sourcesBWithCandidate: z.number().int(),
+  /** Median separation of mutual-best pairs, arcsec. */
   medianSepArcsec: z.number().nullable(),
   /** Median offset of B minus A over mutual-best pairs, arcsec, east and north. */
   medianOffsetEastArcsec: z.number().nullable(),
@@ -170,6 +171,7 @@ export const candidateQuery = pageQuery.extend({
   kind: z.enum(['any', 'clear', 'crowded']).default('any'),
   minSepArcsec: z.coerce.number().min(0).optional(),
   maxSepArcsec: z.coerce.number().min(0).optional(),
+  /** Labels of two catalogues of the run with a comma between, in either order. */
   pair: z.string().max(50).optional(),
 });
 

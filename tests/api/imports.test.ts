@@ -5,11 +5,22 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { inTransaction } from '../../db/client';
 import { JOB_KIND_WORK } from '../../server/jobs/kinds';
 import { cancelJob, runJob } from '../../server/services/jobs';
+import type { ColumnMapping } from '../../shared/schemas/mapping';
 import type { UploadedFile } from '../../shared/schemas/file';
 import { importTable, startImport, upload } from '../support/uploads';
 import { createWorld, type World } from '../support/world';
 
 const SAMPLES = path.join(import.meta.dirname, '..', 'outside', 'data');
+
+const POSITION_ONLY: ColumnMapping = {
+  position: { kind: 'two-columns', raColumn: 1, decColumn: 2, raNotation: 'degrees', decNotation: 'degrees' },
+  keyColumn: 0,
+  names: [],
+  error: null,
+  properMotion: null,
+  photometry: [],
+  redshift: null,
+};
 
 const GOOD = [
   'id,name,ra,dec,err,gmag',
@@ -51,13 +62,14 @@ describe('import', () => {
     const sources = (await world.agents.reader.get(world.api('catalogues/GOOD/sources'))).body as Page;
     expect(sources.total).toBe(3);
     expect(sources.items[1]).toMatchObject({
-      designation: 'ABC 002',
+      designation: 'K2',
       raDeg: 359.99999,
       decDeg: -20.5,
       cells: ['K2', 'ABC 002', '359.99999', '-20.5', '0.3', ''],
       objectNumber: 2,
     });
-    expect(await rowsIn('alias')).toBe(3);
+    // Both the key and the name of each row can be found.
+    expect(await rowsIn('alias')).toBe(6);
     const coverage = await world.agents.reader.get(world.api('catalogues/GOOD/coverage'));
     const cells = (coverage.body as { cells: { count: number }[] }).cells;
     expect(cells.reduce((sum, cell) => sum + cell.count, 0)).toBe(3);
@@ -65,7 +77,14 @@ describe('import', () => {
 
   it('sets rows aside with line, column and reason, takes the rest, and hands them out as a file', async () => {
     const text = `${GOOD}\nK4,ABC 004,370,-20,0.1,\nK5,ABC 005,10,95,0.1,\nK6,ABC 006,10,x,0.1,\nK1,ABC 007,10,10,0.1,\nK8,ABC 008,10,10,oops,\nK9,short\n`;
-    const { job, catalogue } = await importTable(world, 'MIXED', text);
+    const { job, catalogue } = await importTable(world, 'MIXED', text, {
+      mapping: {
+        ...POSITION_ONLY,
+        position: { kind: 'two-columns', raColumn: 2, decColumn: 3, raNotation: 'degrees', decNotation: 'degrees' },
+        names: [{ column: 1, separator: null }],
+        error: { kind: 'circle', column: 4, unit: 'arcsec', meaning: 'sigma' },
+      },
+    });
     expect(job.state).toBe('done');
     expect(catalogue).toMatchObject({ sources: 3, setAside: 6, rowsRead: 9 });
     const aside = (await world.agents.reader.get(world.api('catalogues/MIXED/set-aside'))).body as Page;
@@ -91,7 +110,9 @@ describe('import', () => {
         let after = '';
         for (;;) {
           const url = world.api(`catalogues/PAGES/sources?sort=${sort}&order=${order}&limit=40${after}`);
-          const page = (await world.agents.reader.get(url)).body as Page;
+          const answer = await world.agents.reader.get(url);
+          expect([sort, order, answer.status]).toEqual([sort, order, 200]);
+          const page = answer.body as Page;
           seen.push(...page.items.map((item) => item.rowNo));
           if (page.next === null) break;
           after = `&after=${encodeURIComponent(page.next)}`;
@@ -148,7 +169,9 @@ describe('import', () => {
   });
 
   it('says in one sentence why no row could be read, and leaves the label free', async () => {
-    const { job, catalogue } = await importTable(world, 'NONE', 'id,ra,dec\na,400,1\nb,500,2\n');
+    const { job, catalogue } = await importTable(world, 'NONE', 'id,ra,dec\na,400,1\nb,500,2\n', {
+      mapping: POSITION_ONLY,
+    });
     expect(catalogue).toBeNull();
     expect(job).toMatchObject({ state: 'failed', error: { code: 'no-sources' } });
     expect(job.error?.detail).toContain('2 rows');
@@ -166,13 +189,8 @@ describe('import', () => {
     const file = (await upload(world, GOOD)).body as UploadedFile;
     const attempt = startImport(world, 'BEYOND', file, {
       mapping: {
+        ...POSITION_ONLY,
         position: { kind: 'two-columns', raColumn: 2, decColumn: 33, raNotation: 'degrees', decNotation: 'degrees' },
-        keyColumn: null,
-        names: [],
-        error: null,
-        properMotion: null,
-        photometry: [],
-        redshift: null,
       },
     });
     await expect(attempt).rejects.toThrow(/mapping-refused.*mapping\.position\.decColumn/);

@@ -9,6 +9,7 @@ const NOBODYS: Record<string, string> = {
   personId: '999999',
   jobId: '00000000-0000-4000-8000-000000000000',
   fileId: '00000000-0000-4000-8000-000000000000',
+  id: '999999',
   label: 'NOBODYS',
   run: '999999',
   seq: '999999',

@@ -23,7 +23,7 @@ export function bigTablePath(server: BenchServer): string {
 /** Import of a million rows of twelve columns against a bare \copy of the same file on the same server. */
 export async function importFigures(server: BenchServer): Promise<Figure[]> {
   const file = bigTablePath(server);
-  await writeBigTable(file, { rows: ROWS, columns: COLUMNS, seed: 1 });
+  await writeBigTable(file, { rows: ROWS, seed: 1 });
   const bareSeconds = await bareCopySeconds(server, file);
   const { readySeconds, jobSeconds } = await importTable(server, file, 'BIGA');
   const data = `${ROWS} rows x ${COLUMNS} columns, CSV`;
