@@ -1,14 +1,15 @@
 import { openDatabase } from '../db/client';
-import { readConfig } from './config';
+import { withInstallationDatabase } from './launch/one-off';
+import { tell } from './launch/say';
 import { checkRegistry, everyGroup, type RegistryReport } from './services/registry-check';
 
 /**
  * `npm run check:registry`: rebuilds every group's objects from its verdicts alone and compares. One line per
  * group; exit code 1 when anything differs.
  */
-async function main(): Promise<number> {
+async function main(databaseUrl: string): Promise<number> {
   const database = openDatabase(
-    databaseUrl(),
+    databaseUrl,
     (error) => console.error(`connection lost: ${error.message}`),
     2,
   );
@@ -27,12 +28,6 @@ async function main(): Promise<number> {
   }
 }
 
-/** Nothing here signs anybody in, so a missing session secret is no reason to stop. */
-function databaseUrl(): string {
-  return readConfig({ IDEM_SESSION_SECRET: 'unused by this command, which signs in nobody', ...process.env })
-    .databaseUrl;
-}
-
 function print(report: RegistryReport): void {
   const sizes = `${report.objects} objects (${report.liveObjects} live), ${report.verdictsInForce} verdicts in force, ${report.conflicts} conflicts`;
   const result =
@@ -43,4 +38,9 @@ function print(report: RegistryReport): void {
   if (hidden > 0) console.log(`  ... and ${hidden} more`);
 }
 
-process.exitCode = await main();
+try {
+  process.exitCode = await withInstallationDatabase(process.env, main);
+} catch (error) {
+  tell(error);
+  process.exitCode = 1;
+}

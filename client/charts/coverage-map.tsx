@@ -38,7 +38,7 @@ export function CoverageMap({
   const colour = ordinal === undefined ? 'var(--ink)' : `var(--stamp-${stampOf(ordinal).hue}-line)`;
   const bounds = countClasses(cells, CLASSES);
   return (
-    <figure ref={ref} className="grid w-full min-w-0 gap-2">
+    <figure ref={ref} className="grid w-full min-w-0 content-start gap-2">
       <Picture
         cells={cells}
         cellSizeDeg={cellSizeDeg}
@@ -81,7 +81,7 @@ function Picture({
   bounds: readonly number[];
 }) {
   const clipId = useId();
-  const heightPx = Math.round(widthPx * 0.72);
+  const heightPx = Math.round(widthPx * 0.66);
   const drawn = useMemo(
     () => drawing(cells, cellSizeDeg, widthPx, heightPx, bounds),
     [cells, cellSizeDeg, widthPx, heightPx, bounds],
@@ -167,7 +167,9 @@ function Numbers({
             y={edge === 'bottom' && !whole ? at.y + 14 : at.y}
             dy={edge === 'bottom' && !whole ? 0 : 4}
             textAnchor={side ? 'end' : 'middle'}
-            {...(whole ? { stroke: 'var(--raised)', strokeWidth: 3, paintOrder: 'stroke' } : {})}
+            {...(whole
+              ? { stroke: 'var(--raised)', strokeWidth: 5, strokeLinejoin: 'round', paintOrder: 'stroke' }
+              : {})}
           >
             {text}
           </text>

@@ -37,7 +37,7 @@ export function FindingChart(props: FindingChartProps) {
   const years = useMemo(() => motionYears(sources, radiusArcsec), [sources, radiusArcsec]);
   const rows = useMemo(() => sourceTableRows(sources, centre), [sources, centre]);
   return (
-    <figure ref={ref} className="grid w-full min-w-0 gap-2">
+    <figure ref={ref} className="grid w-full min-w-0 content-start gap-2">
       <div
         {...bind}
         role="group"

@@ -43,7 +43,7 @@ export function Histogram(props: HistogramProps) {
   const digits = Math.max(0, 1 - Math.floor(Math.log10((hi - lo) / counts.length)));
   const unit = xUnit === undefined ? '' : ` (${xUnit})`;
   return (
-    <figure ref={ref} className="grid w-full min-w-0 gap-2">
+    <figure ref={ref} className="grid w-full min-w-0 content-start gap-2">
       <svg
         width={widthPx}
         height={heightPx}

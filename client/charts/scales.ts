@@ -64,13 +64,6 @@ export function linearTicks(lo: number, hi: number, most = 6): number[] {
   });
 }
 
-/** Powers of ten inside lo..hi, rising. */
-export function decadeTicks(lo: number, hi: number): number[] {
-  const first = Math.ceil(Math.log10(lo) - 1e-9);
-  const last = Math.floor(Math.log10(hi) + 1e-9);
-  return Array.from({ length: Math.max(0, last - first + 1) }, (_, i) => Number(`1e${first + i}`));
-}
-
 /** A tick's number with as many decimals as its step needs. */
 export function tickText(value: number, step: number): string {
   if (value !== 0 && (Math.abs(value) >= 1e6 || step < 1e-6)) return value.toExponential(1).replace('-', '−');

@@ -16,7 +16,8 @@ export interface GraticuleLine {
 }
 
 const SAMPLES = 64;
-const LINES = 5;
+/** About so many lines over the reach, which is wider than the picture. */
+const LINES = 9;
 
 function range(lo: number, hi: number): number[] {
   return Array.from({ length: SAMPLES + 1 }, (_, i) => lo + ((hi - lo) * i) / SAMPLES);
@@ -41,7 +42,7 @@ export function graticule(
   const ras = raReach === 180 ? [0, 45, 90, 135, 180, 225, 270, 315] : linearTicks(raLo, raHi, LINES);
   const decStep = whole ? 30 : tickStep(decLo, decHi, LINES);
   const decs = whole
-    ? [-60, -30, 0, 30, 60]
+    ? [-60, -30, 30, 60]
     : linearTicks(decLo, decHi, LINES).filter((dec) => Math.abs(dec) < 90);
   return {
     ra: ras.map((ra) => {

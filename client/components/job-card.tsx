@@ -116,7 +116,7 @@ function JobFigures({ job }: { job: Job }) {
   const parts: string[] = [];
   if (job.total !== null) parts.push(`${formatCount(job.done)} of ${formatCount(job.total)}`);
   else if (job.done > 0) parts.push(formatCount(job.done));
-  if (share !== null && !isFinished(job)) parts.push(`${Math.floor(share * 100)}\u2009%`);
+  if (share !== null && !isFinished(job)) parts.push(`${Math.floor(share * 100)}\u00a0%`);
   if (job.ratePerSecond !== null && job.state === 'running')
     parts.push(`${formatCount(job.ratePerSecond)} per second`);
   if (secondsLeft !== null) parts.push(`${formatDuration(secondsLeft)} left`);

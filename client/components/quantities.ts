@@ -1,6 +1,7 @@
 /** How numbers are written on the screen: one rule per quantity, the unit always with it. */
 
-const THIN = '\u2009';
+/** A number and its unit stay on one line. */
+const NBSP = '\u00a0';
 
 /** A count with groups of three: 12345 -> '12,345'. */
 export function formatCount(count: number): string {
@@ -34,7 +35,7 @@ export function formatAngle(deg: number, digits = 1): string {
 
 /** A share 0..1 in percent: '97.3 %'. */
 export function formatShare(share: number, digits = 1): string {
-  return `${formatFixed(share * 100, digits)}${THIN}%`;
+  return `${formatFixed(share * 100, digits)}${NBSP}%`;
 }
 
 const BYTE_UNITS = ['B', 'kB', 'MB', 'GB', 'TB'] as const;
@@ -42,7 +43,7 @@ const BYTE_UNITS = ['B', 'kB', 'MB', 'GB', 'TB'] as const;
 /** Size of a file in powers of 1000: '13.4 MB'. */
 export function formatBytes(bytes: number): string {
   const step = Math.min(BYTE_UNITS.length - 1, bytes < 1000 ? 0 : Math.floor(Math.log10(bytes) / 3));
-  return `${formatFixed(bytes / 1000 ** step, step === 0 ? 0 : 1)}${THIN}${BYTE_UNITS[step] ?? 'B'}`;
+  return `${formatFixed(bytes / 1000 ** step, step === 0 ? 0 : 1)}${NBSP}${BYTE_UNITS[step] ?? 'B'}`;
 }
 
 /** A duration in its two largest units: '48 s', '3 min 20 s', '2 h 5 min'. */

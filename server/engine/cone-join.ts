@@ -89,15 +89,15 @@ export function* coneJoinChunks(
   radiusArcsec: number,
   { maxPairs = DEFAULT_MAX_PAIRS }: JoinLimits = {},
 ): Generator<JoinChunk, void, undefined> {
-  checkPositions('a', a);
-  checkPositions('b', b);
+  const aRange = checkPositions('a', a);
+  const bRange = checkPositions('b', b);
   checkRadius(radiusArcsec, MAX_JOIN_RADIUS_ARCSEC);
   const totalRows = a.raDeg.length;
   if (totalRows === 0 || b.raDeg.length === 0) return;
 
   const radius = joinRadius(radiusArcsec);
-  const buckets = bucketsByDeclination(a, b, radius);
-  const grid = createJoinGrid(b.raDeg);
+  const buckets = bucketsByDeclination(a, aRange, b, radius);
+  const grid = createJoinGrid(bRange.raMin, bRange.raMax);
   const buffer = createPairBuffer(ROWS_PER_CHUNK * 2);
   let found = 0;
   for (let bucket = 0; bucket < buckets.bucketCount; bucket += 1) {

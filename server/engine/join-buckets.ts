@@ -4,7 +4,7 @@
  * within the radius of; rows of A never are: so each pair comes out of exactly one bucket.
  */
 import type { JoinRadius } from './join-radius';
-import type { PositionColumns } from './positions';
+import type { PositionColumns, PositionRange } from './positions';
 
 /** Values of one record: ra (degrees), dec (degrees), row number. */
 export const RECORD_SIZE = 3;
@@ -63,16 +63,10 @@ export function bucketsByDeclination(
   };
 }
 
-function decBins(decDeg: Float64Array, otherRows: number): DecBins {
-  let min = Infinity;
-  let max = -Infinity;
-  for (let row = 0; row < decDeg.length; row += 1) {
-    const dec = decDeg[row] as number;
-    if (dec < min) min = dec;
-    if (dec > max) max = dec;
-  }
-  const count = max > min ? Math.min(MAX_BINS, decDeg.length + otherRows) : 1;
-  return { min, count, perDeg: max > min ? count / (max - min) : 0 };
+function decBins({ decMin, decMax }: PositionRange, rows: number): DecBins {
+  const heightDeg = decMax - decMin;
+  const count = heightDeg > 0 ? Math.min(MAX_BINS, rows) : 1;
+  return { min: decMin, count, perDeg: heightDeg > 0 ? count / heightDeg : 0 };
 }
 
 /**

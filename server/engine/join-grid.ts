@@ -8,6 +8,9 @@ import { RECORD_SIZE } from './join-buckets';
 import { paddedHalfWidthDeg, type JoinRadius } from './join-radius';
 
 const SECTORS = 512;
+/** So many rows of a bucket are enough to see how they spread over the sectors. */
+const SAMPLE_ROWS = 4096;
+const CELLS_PER_ROW = 2;
 const MAX_ZONES = 8192;
 /** A zone is at least this many radii high, so that few rows of B touch two zones. */
 const MIN_ZONE_IN_RADII = 8;
@@ -36,22 +39,14 @@ export interface JoinGrid {
   moreZones: Uint16Array;
 }
 
-/** An empty grid for rows of B with these right ascensions (degrees). */
-export function createJoinGrid(raDeg: Float64Array): JoinGrid {
-  let raMin = Infinity;
-  let raMax = -Infinity;
-  for (let row = 0; row < raDeg.length; row += 1) {
-    const ra = raDeg[row] as number;
-    if (ra < raMin) raMin = ra;
-    if (ra > raMax) raMax = ra;
-  }
+/** An empty grid for rows of B between two right ascensions (degrees). */
+export function createJoinGrid(raMin: number, raMax: number): JoinGrid {
   return {
     decMin: 0,
     zonesPerDeg: 0,
     zones: 0,
-    // 360 is stored as 0 in the records.
-    raMin: raMax === 360 ? 0 : raMin,
-    sectorsPerDeg: raMax > raMin ? SECTORS / (raMax - (raMax === 360 ? 0 : raMin)) : 0,
+    raMin,
+    sectorsPerDeg: raMax > raMin ? SECTORS / (raMax - raMin) : 0,
     cells: 0,
     firstCell: new Int32Array(SECTORS),
     cellsOfSector: new Int32Array(SECTORS),
@@ -64,21 +59,30 @@ export function createJoinGrid(raDeg: Float64Array): JoinGrid {
   };
 }
 
-/** Zone of a declination, clamped; it never falls when the declination grows. */
-export function zoneOf(grid: JoinGrid, dec: number): number {
-  const zone = ((dec - grid.decMin) * grid.zonesPerDeg) | 0;
-  return zone < 0 ? 0 : zone >= grid.zones ? grid.zones - 1 : zone;
+/**
+ * Zone of a declination, clamped; it never falls when the declination grows. This and `cellIn` take plain numbers
+ * rather than the grid, so that loops read its fields once and not for every row.
+ */
+export function zoneIn(dec: number, decMin: number, zonesPerDeg: number, zones: number): number {
+  const zone = ((dec - decMin) * zonesPerDeg) | 0;
+  return zone < 0 ? 0 : zone >= zones ? zones - 1 : zone;
 }
 
 /** Cell (within its zone) of a right ascension, clamped; it never falls when the right ascension grows. */
-export function cellOf(grid: JoinGrid, ra: number): number {
-  const place = (ra - grid.raMin) * grid.sectorsPerDeg;
+export function cellIn(
+  ra: number,
+  raMin: number,
+  sectorsPerDeg: number,
+  cells: number,
+  firstCell: Int32Array,
+  cellsOfSector: Int32Array,
+): number {
+  const place = (ra - raMin) * sectorsPerDeg;
   if (place <= 0) return 0;
-  if (place >= SECTORS) return grid.cells - 1;
+  if (place >= SECTORS) return cells - 1;
   const sector = place | 0;
-  const cell =
-    (grid.firstCell[sector] as number) + (((place - sector) * (grid.cellsOfSector[sector] as number)) | 0);
-  return cell < grid.cells ? cell : grid.cells - 1;
+  const cell = (firstCell[sector] as number) + (((place - sector) * (cellsOfSector[sector] as number)) | 0);
+  return cell < cells ? cell : cells - 1;
 }
 
 /** Fills the grid with records `from` to `to` of B, for rows of A between two declinations. */
@@ -92,22 +96,23 @@ export function fillJoinGrid(
   radius: JoinRadius,
 ): void {
   const rows = to - from;
-  const occupied = countSectors(grid, bRecords, from, to);
+  const occupied = sampleSectors(grid, bRecords, from, to);
   shapeZones(grid, occupied, rows, aDecMin, aDecMax, radius);
-  shareCells(grid, Math.ceil((2 * rows) / grid.zones), rows);
+  shareCells(grid, Math.ceil((CELLS_PER_ROW * rows) / grid.zones), rows);
   makeRoom(grid, rows);
   countCells(grid, bRecords, from, to, radius.paddedDeg);
   placeRecords(grid, bRecords, from, to);
 }
 
-/** Rows in each sector; returns the width in RA (degrees) of the sectors that are not empty. */
-function countSectors(grid: JoinGrid, bRecords: Float64Array, from: number, to: number): number {
+/** Rows in each sector, from a sample; returns the width in RA (degrees) of the sectors that are not empty. */
+function sampleSectors(grid: JoinGrid, bRecords: Float64Array, from: number, to: number): number {
   const { rowsInSector, raMin, sectorsPerDeg } = grid;
   rowsInSector.fill(0);
-  for (let at = from * RECORD_SIZE; at < to * RECORD_SIZE; at += RECORD_SIZE) {
+  const stride = Math.max(1, Math.floor((to - from) / SAMPLE_ROWS));
+  for (let at = from * RECORD_SIZE; at < to * RECORD_SIZE; at += RECORD_SIZE * stride) {
     const place = (((bRecords[at] as number) - raMin) * sectorsPerDeg) | 0;
     const sector = place < SECTORS ? place : SECTORS - 1;
-    rowsInSector[sector] = (rowsInSector[sector] as number) + 1;
+    rowsInSector[sector] = (rowsInSector[sector] as number) + stride;
   }
   let occupied = 0;
   for (let sector = 0; sector < SECTORS; sector += 1) if ((rowsInSector[sector] as number) > 0) occupied += 1;
@@ -171,19 +176,21 @@ function makeRoom(grid: JoinGrid, rows: number): void {
  * filled, cellStart[i] is where cell i begins.
  */
 function countCells(grid: JoinGrid, bRecords: Float64Array, from: number, to: number, haloDeg: number): void {
-  const { cellStart, cells, slotOfRow, moreZones } = grid;
+  const { cellStart, cells, slotOfRow, moreZones, decMin, zonesPerDeg, zones } = grid;
+  const { raMin, sectorsPerDeg, firstCell, cellsOfSector } = grid;
   for (let row = from, at = from * RECORD_SIZE; row < to; row += 1, at += RECORD_SIZE) {
     const dec = bRecords[at + 1] as number;
-    const first = zoneOf(grid, dec - haloDeg);
-    const last = zoneOf(grid, dec + haloDeg);
-    const slot = first * cells + cellOf(grid, bRecords[at] as number);
+    const first = zoneIn(dec - haloDeg, decMin, zonesPerDeg, zones);
+    const last = zoneIn(dec + haloDeg, decMin, zonesPerDeg, zones);
+    const cell = cellIn(bRecords[at] as number, raMin, sectorsPerDeg, cells, firstCell, cellsOfSector);
+    const slot = first * cells + cell;
     slotOfRow[row - from] = slot;
     moreZones[row - from] = last - first;
     for (let zone = first, of = slot + 2; zone <= last; zone += 1, of += cells) {
       cellStart[of] = (cellStart[of] as number) + 1;
     }
   }
-  const end = grid.zones * cells + 2;
+  const end = zones * cells + 2;
   let sum = 0;
   for (let slot = 2; slot < end; slot += 1) {
     sum += cellStart[slot] as number;

@@ -1,7 +1,7 @@
 /** Innermost part of the join: rows of A against the cells of one grid. */
 import { separationArcsec } from '../../shared/astro/sphere';
 import { RECORD_SIZE } from './join-buckets';
-import { cellOf, zoneOf, type JoinGrid } from './join-grid';
+import { cellIn, zoneIn, type JoinGrid } from './join-grid';
 import {
   paddedHalfWidthDeg,
   SERIES_LIMIT_DEG,
@@ -23,12 +23,13 @@ export function scanRows(
   radius: JoinRadius,
   pairs: PairBuffer,
 ): void {
-  const { zoneHalfWidth, cellStart, records, cells } = grid;
+  const { zoneHalfWidth, cellStart, records, cells, decMin, zonesPerDeg, zones } = grid;
+  const { raMin, sectorsPerDeg, firstCell, cellsOfSector } = grid;
   const { paddedDeg } = radius;
   for (let at = from * RECORD_SIZE; at < to * RECORD_SIZE; at += RECORD_SIZE) {
     const ra = aRecords[at] as number;
     const dec = aRecords[at + 1] as number;
-    const zone = zoneOf(grid, dec);
+    const zone = zoneIn(dec, decMin, zonesPerDeg, zones);
     const halfOfZone = zoneHalfWidth[zone] as number;
     const halfWidth = halfOfZone > 0 ? halfOfZone : paddedHalfWidthDeg(radius, dec);
     const low = ra - halfWidth;
@@ -38,8 +39,10 @@ export function scanRows(
       continue;
     }
     const zoneStart = zone * cells;
-    const stop = cellStart[zoneStart + cellOf(grid, high) + 1] as number;
-    for (let place = cellStart[zoneStart + cellOf(grid, low)] as number; place < stop; place += 1) {
+    const lastCell = cellIn(high, raMin, sectorsPerDeg, cells, firstCell, cellsOfSector);
+    const firstOwn = cellIn(low, raMin, sectorsPerDeg, cells, firstCell, cellsOfSector);
+    const stop = cellStart[zoneStart + lastCell + 1] as number;
+    for (let place = cellStart[zoneStart + firstOwn] as number; place < stop; place += 1) {
       const other = place * RECORD_SIZE;
       const dDec = (records[other + 1] as number) - dec;
       if (dDec > paddedDeg || dDec < -paddedDeg) continue;
@@ -87,10 +90,12 @@ function scanWindow(
   radius: JoinRadius,
   pairs: PairBuffer,
 ): void {
-  const { records, cellStart } = grid;
-  const zoneStart = zone * grid.cells;
-  const stop = cellStart[zoneStart + cellOf(grid, high) + 1] as number;
-  for (let place = cellStart[zoneStart + cellOf(grid, low)] as number; place < stop; place += 1) {
+  const { records, cellStart, cells, raMin, sectorsPerDeg, firstCell, cellsOfSector } = grid;
+  const zoneStart = zone * cells;
+  const lastCell = cellIn(high, raMin, sectorsPerDeg, cells, firstCell, cellsOfSector);
+  const firstOwn = cellIn(low, raMin, sectorsPerDeg, cells, firstCell, cellsOfSector);
+  const stop = cellStart[zoneStart + lastCell + 1] as number;
+  for (let place = cellStart[zoneStart + firstOwn] as number; place < stop; place += 1) {
     const other = place * RECORD_SIZE;
     const dDec = (records[other + 1] as number) - dec;
     if (dDec > radius.paddedDeg || dDec < -radius.paddedDeg) continue;

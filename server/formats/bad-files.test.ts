@@ -173,7 +173,7 @@ describe('what goes wrong further on', () => {
     });
     expect(refusal.code).toBe('file-gzip-bomb');
     expect(refusal.message).toContain('200 times');
-  });
+  }, 30_000);
 
   it('an error of the storage comes through as it is', async () => {
     for (const compression of ['none', 'gzip'] as const) {

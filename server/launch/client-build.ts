@@ -90,7 +90,7 @@ async function runVite(args: string[], signal?: AbortSignal): Promise<void> {
   const bound = boundCommand(process.execPath, [vite, ...args], 'KILL');
   const child = spawn(bound.command, bound.args, {
     cwd: PROJECT_ROOT,
-    env: { ...process.env, NODE_ENV: 'production' },
+    env: { ...process.env, NODE_ENV: 'production', NO_COLOR: '1', FORCE_COLOR: undefined },
     stdio: ['ignore', 'pipe', 'pipe'],
     signal,
   });

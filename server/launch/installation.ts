@@ -8,8 +8,8 @@ import type { Life } from './lifecycle';
 import { PROJECT_ROOT } from './project';
 import { say, StartProblem } from './say';
 
-const DATABASE = 'idem';
-const SECRET_FILE = 'session-secret';
+export const DATABASE = 'idem';
+export const SECRET_FILE = 'session-secret';
 const LEFTOVER_GRACE_MS = 1000;
 /** Written into the lock at the end; a new start waits that long for it to be given back. */
 const STOPPING = 'stopping';

@@ -1,5 +1,4 @@
-import { ClusterProblem } from '../../db/cluster-problem';
-import { say, StartProblem } from './say';
+import { say, tell } from './say';
 
 /** What the parts of a running installation share: when to stop, and what to undo then. */
 export interface Life {
@@ -61,9 +60,4 @@ export function live(start: (life: Life) => Promise<void>): void {
 async function settled(started: Promise<void>): Promise<void> {
   const limit = new Promise<void>((resolve) => setTimeout(resolve, SETTLE_LIMIT_MS).unref());
   await Promise.race([started.catch(() => undefined), limit]);
-}
-
-function tell(problem: unknown): void {
-  if (problem instanceof StartProblem || problem instanceof ClusterProblem) say(problem.message);
-  else say(problem instanceof Error ? (problem.stack ?? problem.message) : String(problem));
 }

@@ -11,7 +11,6 @@ import type { JobRun } from './jobs';
 import { conflictingCandidates, decidedByRule } from './policies';
 import { lockRegistry } from './registry-lock';
 import { runById, type RunRow } from './run-lookup';
-import { refreshInForce, takeBackWhere } from './verdict-log';
 
 const policyPayload = z.strictObject({ act: z.enum(['apply', 'take back']), policyId: z.number().int() });
 type PolicyRow = typeof appliedPolicy.$inferSelect;
@@ -70,14 +69,18 @@ async function applyPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: Run
   await run.report(0, null, 'Looking for conflicts');
   const conflicting = await conflictingCandidates(tx, actor, matchRun, policy.rule);
   await run.report(0, null, 'Giving verdicts');
+  // No pair here has a verdict in force, so what is inserted is in force; no pair needs to be looked at again.
   const inserted = await tx.execute(sql`
-    insert into verdict (group_id, entry_a, entry_b, value, grade, person_id, run_id, policy_id)
-    select c.group_id, least(c.entry_a, c.entry_b), greatest(c.entry_a, c.entry_b), 'same', ${policy.rule.grade},
-      ${policy.createdBy}::int, ${matchRun.id}::int, ${policy.id}::int
-    from ${candidatesWithVerdict} where ${decidedByRule(actor, matchRun, policy.rule, conflicting)}
-    order by c.seq`);
+    with spoken as (
+      insert into verdict (group_id, entry_a, entry_b, value, grade, person_id, run_id, policy_id)
+      select c.group_id, least(c.entry_a, c.entry_b), greatest(c.entry_a, c.entry_b), 'same', ${policy.rule.grade},
+        ${policy.createdBy}::int, ${matchRun.id}::int, ${policy.id}::int
+      from ${candidatesWithVerdict} where ${decidedByRule(actor, matchRun, policy.rule, conflicting)}
+      order by c.seq
+      returning *)
+    insert into verdict_in_force (group_id, entry_a, entry_b, verdict_id, value, grade, policy_id)
+    select group_id, entry_a, entry_b, id, value, grade, policy_id from spoken`);
   const verdicts = inserted.rowCount ?? 0;
-  await refreshInForce(tx, actor, sql`select entry_a, entry_b from verdict where policy_id = ${policy.id}`);
   await tx.update(appliedPolicy).set({ verdicts }).where(eq(appliedPolicy.id, policy.id));
   await run.report(verdicts, verdicts, 'Merging objects');
   const { changed } = await applyIdentity(tx, actor, 'group');
@@ -97,7 +100,7 @@ async function withdrawPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: 
   if (policy.takenBackAt !== null) return { done: policy.verdicts, message: 'The verdicts are taken back.' };
   const { actor } = run;
   await run.report(0, policy.verdicts, 'Taking verdicts back');
-  const taken = await takeBackWhere(tx, actor, sql`v.policy_id = ${policy.id}`);
+  const taken = await takePolicyBack(tx, run, policy);
   await tx
     .update(appliedPolicy)
     .set({ takenBackAt: sql`now()` })
@@ -110,4 +113,21 @@ async function withdrawPolicy(tx: Tx, run: JobRun, policy: PolicyRow, matchRun: 
     objectsChanged: changed,
   });
   return { done: taken, message: `${taken} automatic verdicts taken back.` };
+}
+
+/**
+ * Takes back every verdict of a policy that nobody took back before. A policy speaks only where nothing is in
+ * force, so below its verdicts there is nothing that could come into force again.
+ */
+async function takePolicyBack(tx: Tx, { actor }: JobRun, policy: PolicyRow): Promise<number> {
+  const { rowCount } = await tx.execute(sql`
+    insert into verdict (group_id, entry_a, entry_b, person_id, takes_back)
+    select v.group_id, v.entry_a, v.entry_b, ${actor.personId}::int, v.id from verdict v
+    where v.group_id = ${actor.groupId} and v.policy_id = ${policy.id}
+      and not exists (select 1 from verdict t where t.takes_back = v.id)
+    order by v.id`);
+  await tx.execute(
+    sql`delete from verdict_in_force where group_id = ${actor.groupId} and policy_id = ${policy.id}`,
+  );
+  return rowCount ?? 0;
 }

@@ -4,7 +4,6 @@ import { verdict } from '../../db/schema/verdict';
 import type { VerdictInForce } from '../../shared/schemas/run';
 import type { Flag, Grade, VerdictValue } from '../../shared/words';
 import type { GroupActor } from '../context';
-import { found } from '../errors';
 
 /** A verdict of a person, before it is written; the pair in any order. */
 export interface SpokenVerdict {
@@ -50,39 +49,21 @@ export async function appendVerdicts(
   return ids;
 }
 
-/** Appends rows that take the verdicts with these ids back, and refreshes what is in force. */
+/** Appends rows that take the verdicts with these ids back (none of them taken back before), and refreshes what is in force. */
 export async function takeBack(tx: Tx, actor: GroupActor, verdictIds: readonly number[]): Promise<void> {
-  await takeBackWhere(tx, actor, sql`v.id = any(${bigintArray(verdictIds)})`);
-}
-
-/** Takes back every verdict that meets the condition (on `v`) and was not taken back before; returns how many. */
-export async function takeBackWhere(tx: Tx, actor: GroupActor, condition: SQL): Promise<number> {
-  const { rows } = await tx.execute<{ first: number | null; taken: number }>(sql`
-    with taken as (
-      insert into verdict (group_id, entry_a, entry_b, person_id, takes_back)
-      select v.group_id, v.entry_a, v.entry_b, ${actor.personId}::int, v.id from verdict v
-      where v.group_id = ${actor.groupId} and v.value is not null and ${condition}
-        and not exists (select 1 from verdict t where t.takes_back = v.id)
-      order by v.id
-      returning id)
-    select min(id) as first, count(*) as taken from taken`);
-  const { first, taken } = found(rows[0], 'count');
-  if (first === null) return 0;
-  // The registry lock is held, so every row of this group from the first one on is ours.
-  await refreshInForce(
-    tx,
-    actor,
-    sql`select entry_a, entry_b from verdict
-      where group_id = ${actor.groupId} and id >= ${first}::bigint and takes_back is not null`,
-  );
-  return taken;
+  const ids = bigintArray(verdictIds);
+  await tx.execute(sql`
+    insert into verdict (group_id, entry_a, entry_b, person_id, takes_back)
+    select group_id, entry_a, entry_b, ${actor.personId}::int, id from verdict
+    where group_id = ${actor.groupId} and id = any(${ids}) order by id`);
+  await refreshInForce(tx, actor, sql`select entry_a, entry_b from verdict where id = any(${ids})`);
 }
 
 /**
- * Brings `verdict_in_force` up to date for the pairs that a query names: the latest verdict that was not taken
- * back counts; a pair without one has no row.
+ * Brings `verdict_in_force` up to date for the pairs that a query names (the few of an act of a person): the latest
+ * verdict that was not taken back counts; a pair without one has no row.
  */
-export async function refreshInForce(tx: Tx, actor: GroupActor, pairs: SQL): Promise<void> {
+async function refreshInForce(tx: Tx, actor: GroupActor, pairs: SQL): Promise<void> {
   await tx.execute(sql`
     with pair as materialized (select distinct entry_a, entry_b from (${pairs}) named),
     latest as (

@@ -154,3 +154,8 @@ export const objectField = z.strictObject({
   nearest: z.array(candidateSide.extend({ sepArcsec: z.number() })),
 });
 export type ObjectField = z.infer<typeof objectField>;
+
+/** What a note said before its edits, the latest first. */
+export const noteVersions = z.strictObject({
+  items: z.array(z.strictObject({ body: z.string(), replacedAt: instant, replacedBy: z.string() })),
+});

@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { candidateQuery } from '../../../shared/schemas/run';
 import {
+  DESK_FILTER,
+  deskAddress,
   filterOfSearch,
   isNarrowed,
   NO_FILTER,
@@ -72,5 +74,19 @@ describe('isNarrowed', () => {
     expect(isNarrowed({ ...NO_FILTER, order: 'desc' }, NO_FILTER)).toBe(false);
     expect(isNarrowed({ ...NO_FILTER, minSepArcsec: 0 }, NO_FILTER)).toBe(true);
     expect(isNarrowed({ ...NO_FILTER, verdict: 'same' }, NO_FILTER)).toBe(true);
+  });
+});
+
+describe('deskAddress', () => {
+  it('goes on with what is undecided when all candidates were listed', () => {
+    expect(deskAddress(3, NO_FILTER)).toBe('review/3');
+    expect(deskAddress(3, { ...NO_FILTER, kind: 'crowded' }, 17)).toBe('review/3?kind=crowded&seq=17');
+  });
+
+  it('keeps a chosen verdict, which the desk reads back', () => {
+    const address = deskAddress(3, FULL, 4);
+    const search = new URLSearchParams(address.slice(address.indexOf('?')));
+    expect(filterOfSearch(search, DESK_FILTER)).toEqual(FULL);
+    expect(search.get('seq')).toBe('4');
   });
 });

@@ -26,6 +26,9 @@ export const NO_FILTER: CandidateFilter = {
   order: 'asc',
 };
 
+/** What the desk shows when its address says nothing: what nobody has decided yet. */
+export const DESK_FILTER: CandidateFilter = { ...NO_FILTER, verdict: 'undecided' };
+
 /** Names in the address. 'order' is the one that tables use as well. */
 export const FILTER_PARAMS = ['verdict', 'kind', 'minSep', 'maxSep', 'pair', 'order'] as const;
 
@@ -95,4 +98,16 @@ export function isNarrowed(filter: CandidateFilter, fallback: CandidateFilter): 
     filter.maxSepArcsec !== fallback.maxSepArcsec ||
     filter.pair !== fallback.pair
   );
+}
+
+/**
+ * The place, below the group, of the desk of a run with this filter, at a candidate or (null) at the first one.
+ * 'any' verdict becomes 'undecided': who opens one of all candidates goes on with those that wait.
+ */
+export function deskAddress(run: number, filter: CandidateFilter, seq: number | null = null): string {
+  const wanted = filter.verdict === 'any' ? { ...filter, verdict: DESK_FILTER.verdict } : filter;
+  const search = withFilter(new URLSearchParams(), wanted, DESK_FILTER);
+  if (seq !== null) search.set('seq', String(seq));
+  const text = search.toString();
+  return `review/${run}${text === '' ? '' : `?${text}`}`;
 }

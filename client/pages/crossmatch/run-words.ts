@@ -33,12 +33,12 @@ export function ruleText(rule: PolicyRule): string {
   return `${parts.join(', ')}: same, ${rule.grade}`;
 }
 
-/** The address of a new cross-match with the settings of this one. */
+/** The place, below the group, of a new cross-match with the settings of this one. */
 export function againAddress({ catalogues, radiusArcsec, title }: RunSummary): string {
   const search = new URLSearchParams({
     catalogues: catalogues.map(({ label }) => label).join(','),
     radius: String(radiusArcsec),
     title,
   });
-  return `new?${search.toString()}`;
+  return `cross-match/new?${search.toString()}`;
 }
