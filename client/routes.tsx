@@ -92,6 +92,8 @@ export const router = createBrowserRouter([
       {
         path: '/g/:group',
         loader: needsMembership,
+        // Filters and sorting live in the query; they change nothing about who may look.
+        shouldRevalidate: ({ currentUrl, nextUrl }) => currentUrl.pathname !== nextUrl.pathname,
         Component: Shell,
         // A page that fails keeps the shell around it: the boundary stands one level below.
         children: [{ ErrorBoundary: RouteProblem, children: groupPages }],

@@ -4,11 +4,14 @@ import { closeContext, contextFromEnvironment, onShutdown } from './process';
 
 const POOL_SIZE = 12;
 const DRAIN_MS = 8000;
+/** Longer than common proxies keep an idle connection, so that it is never this side that closes a reused one. */
+const KEEP_ALIVE_MS = 65_000;
 
 /** The HTTP process. */
 const context = contextFromEnvironment(POOL_SIZE);
 const server = createServer(createApp(context));
 
+server.keepAliveTimeout = KEEP_ALIVE_MS;
 server.on('error', (error) => {
   context.log.fatal({ err: error }, 'cannot listen');
   process.exit(1);

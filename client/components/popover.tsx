@@ -67,6 +67,7 @@ export function Popover({
       {open && (
         <div
           id={panelId}
+          ref={keepInView}
           className={classNames(
             'absolute top-full z-40 mt-1 max-h-[70dvh] w-max max-w-[min(22rem,92vw)] min-w-full overflow-auto border border-edge bg-raised p-3',
             align === 'end' ? 'right-0' : 'left-0',
@@ -77,4 +78,15 @@ export function Popover({
       )}
     </div>
   );
+}
+
+const EDGE_PX = 8;
+
+/** Shifts a panel that would reach beyond the left or right edge of the window. */
+function keepInView(panel: HTMLElement | null): void {
+  if (panel === null) return;
+  const { left, right } = panel.getBoundingClientRect();
+  const widthPx = document.documentElement.clientWidth;
+  const shift = left < EDGE_PX ? EDGE_PX - left : Math.min(0, widthPx - EDGE_PX - right);
+  if (shift !== 0) panel.style.translate = `${shift}px 0`;
 }

@@ -97,7 +97,8 @@ export function* coneJoinChunks(
 
   const radius = joinRadius(radiusArcsec);
   const buckets = bucketsByDeclination(a, aRange, b, radius);
-  const grid = createJoinGrid(bRange.raMin, bRange.raMax);
+  // The records hold 0 for an RA of 360.
+  const grid = createJoinGrid(bRange.raMax === 360 ? 0 : bRange.raMin, bRange.raMax);
   const buffer = createPairBuffer(ROWS_PER_CHUNK * 2);
   let found = 0;
   for (let bucket = 0; bucket < buckets.bucketCount; bucket += 1) {

@@ -42,10 +42,11 @@ interface BinnedRows {
 /** Sorts both catalogues into buckets. Rows of B that no row of A can be near are left out. */
 export function bucketsByDeclination(
   a: PositionColumns,
+  aRange: PositionRange,
   b: PositionColumns,
   radius: JoinRadius,
 ): JoinBuckets {
-  const bins = decBins(a.decDeg, b.decDeg.length);
+  const bins = decBins(aRange, a.decDeg.length + b.decDeg.length);
   // Whole bins are copied into neighbouring buckets; one bin more than the radius allows for rounding.
   const reach = Math.ceil(radius.paddedDeg * bins.perDeg) + 1;
   const aBinned = binRows(a.decDeg, bins, 0);

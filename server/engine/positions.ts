@@ -6,7 +6,7 @@ export interface PositionColumns {
   readonly decDeg: Float64Array;
 }
 
-/** The smallest box that holds some positions, degrees; RA 360 counts as 0. Infinities for no positions at all. */
+/** The smallest box that holds some positions, degrees. Infinities for no positions at all. */
 export interface PositionRange {
   raMin: number;
   raMax: number;
@@ -22,19 +22,22 @@ export function checkPositions(name: string, { raDeg, decDeg }: PositionColumns)
   if (raDeg.length !== decDeg.length) {
     throw new RangeError(`${name}: raDeg has ${raDeg.length} rows, decDeg has ${decDeg.length}`);
   }
-  let [raMin, raMax, decMin, decMax] = [Infinity, -Infinity, Infinity, -Infinity];
+  let raMin = Infinity;
+  let raMax = -Infinity;
+  let decMin = Infinity;
+  let decMax = -Infinity;
   for (let row = 0; row < raDeg.length; row += 1) {
-    const ra = raDeg[row] ?? NaN;
-    const dec = decDeg[row] ?? NaN;
+    const ra = raDeg[row] as number;
+    const dec = decDeg[row] as number;
     // Written so that NaN fails.
     if (!(ra >= 0 && ra <= 360)) throw new RangeError(`${name}.raDeg[${row}] must be 0..360, not ${ra}`);
     if (!(dec >= -90 && dec <= 90)) throw new RangeError(`${name}.decDeg[${row}] must be -90..90, not ${dec}`);
-    if (ra < raMin || ra === 360) raMin = ra === 360 ? 0 : ra;
-    if (ra > raMax && ra < 360) raMax = ra;
+    if (ra < raMin) raMin = ra;
+    if (ra > raMax) raMax = ra;
     if (dec < decMin) decMin = dec;
     if (dec > decMax) decMax = dec;
   }
-  return { raMin, raMax: Math.max(raMin, raMax), decMin, decMax };
+  return { raMin, raMax, decMin, decMax };
 }
 
 /** Throws RangeError for a radius (arcsec) that is not above 0 and at most `maxArcsec`. */

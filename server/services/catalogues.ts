@@ -4,13 +4,15 @@ import { catalogue, catalogueRevision, setAsideRow, storedFile } from '../../db/
 import { researchGroup } from '../../db/schema/group';
 import { person } from '../../db/schema/person';
 import type { CatalogueCitation, CatalogueDetail, CatalogueSummary, Coverage, NewCatalogue } from '../../shared/schemas/catalogue';
-import type { ColumnMapping, SetAsideRow } from '../../shared/schemas/mapping';
+import type { SetAsideRow } from '../../shared/schemas/mapping';
 import { setAsideCode } from '../../shared/schemas/mapping';
 import type { Context, GroupActor } from '../context';
 import { found, refuse } from '../errors';
 import { columnRoles } from '../formats/column-roles';
 import { recordEvent } from './audit';
+import { columnsUnder, storedFileOf } from './files';
 import { enqueueJob } from './jobs';
+import { refuseColumnsBeyond } from './mapping-check';
 
 /** Makes the catalogue and its first revision and queues the import of the file. */
 export async function createCatalogue(
@@ -18,13 +20,10 @@ export async function createCatalogue(
   actor: GroupActor,
   input: NewCatalogue,
 ): Promise<{ label: string; revision: number; jobId: string }> {
+  await storedFileOf(context, actor, input.fileId);
+  const columns = (await columnsUnder(context, input.fileId, input.dialect)).map(({ name, kind }) => ({ name, kind }));
+  refuseColumnsBeyond(input.mapping, columns.length);
   return inTransaction(context.database, actor, async (tx) => {
-    const [file] = await tx
-      .select()
-      .from(storedFile)
-      .where(and(eq(storedFile.id, input.fileId), eq(storedFile.groupId, actor.groupId)));
-    const columns = found(file, 'file').inspection.columns.map(({ name, kind }) => ({ name, kind }));
-    refuseColumnsBeyond(input.mapping, columns.length);
     // One catalogue after the other: the order of arrival decides the stamp.
     await tx.select().from(researchGroup).where(eq(researchGroup.id, actor.groupId)).for('update');
     const catalogueId = await insertCatalogue(tx, actor, input);
@@ -83,31 +82,6 @@ async function insertCatalogue(tx: Tx, actor: GroupActor, input: NewCatalogue): 
     });
   }
   return row.id;
-}
-
-/** All column indexes of a mapping, with the path of the field that names each. */
-function mappedColumns(mapping: ColumnMapping): { path: string; index: number }[] {
-  const list: { path: string; index: number | null }[] = [{ path: 'keyColumn', index: mapping.keyColumn }];
-  const collect = (path: string, part: object | null) => {
-    for (const [name, value] of Object.entries(part ?? {})) {
-      if (/column$/i.test(name) && typeof value === 'number') list.push({ path: `${path}.${name}`, index: value });
-    }
-  };
-  collect('position', mapping.position);
-  collect('error', mapping.error);
-  collect('properMotion', mapping.properMotion);
-  collect('redshift', mapping.redshift);
-  mapping.names.forEach((name, i) => collect(`names.${i}`, name));
-  mapping.photometry.forEach((band, i) => collect(`photometry.${i}`, band));
-  return list.flatMap(({ path, index }) => (index === null ? [] : [{ path, index }]));
-}
-
-function refuseColumnsBeyond(mapping: ColumnMapping, columnCount: number): void {
-  const beyond = mappedColumns(mapping).filter(({ index }) => index >= columnCount);
-  if (beyond.length === 0) return;
-  refuse('mapping-refused', `The file has ${columnCount} columns; the mapping names more.`, {
-    errors: beyond.map(({ path, index }) => ({ path: `mapping.${path}`, message: `there is no column ${index + 1}` })),
-  });
 }
 
 const newestRevision = sql`${catalogueRevision.number} = (

@@ -12,6 +12,7 @@ import { inspectTextTable } from '../formats/inspect';
 import { previewMapping } from '../formats/preview';
 import { UnreadableFile } from '../formats/unreadable-file';
 import { recordEvent } from './audit';
+import { refuseColumnsBeyond } from './mapping-check';
 
 const MIB = 1024 * 1024;
 
@@ -107,6 +108,11 @@ async function readable<T>(read: () => Promise<T>): Promise<T> {
   }
 }
 
+/** The columns of a stored file under a dialect; refuses a file that cannot be read so. */
+export async function columnsUnder(context: Context, fileId: string, dialect: TextDialect) {
+  return (await inspect(context, fileId, dialect)).columns;
+}
+
 function inspect(context: Context, fileId: string, dialect: Partial<TextDialect>): Promise<FileInspection> {
   return readable(() =>
     inspectTextTable(() => context.files.open(fileId), { maxUnpackedBytes: context.config.maxUnpackedBytes, dialect }),
@@ -145,6 +151,7 @@ export async function previewFile(
   mapping: ColumnMapping,
 ): Promise<MappingPreview> {
   await storedFileOf(context, actor, fileId);
+  refuseColumnsBeyond(mapping, (await columnsUnder(context, fileId, dialect)).length);
   return readable(() =>
     previewMapping(() => context.files.open(fileId), dialect, mapping, {
       maxUnpackedBytes: context.config.maxUnpackedBytes,

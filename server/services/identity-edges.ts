@@ -68,12 +68,10 @@ export async function selectReachable(
   return rows.map((row) => row.id);
 }
 
-/** Entries whose identity may differ from that of their birth: named by a 'same' verdict in force, or merged now. */
-export async function selectAllInvolved(tx: Tx, actor: GroupActor): Promise<number[]> {
+/** Entries whose objects are not as they were born: those that forward, or hold other entries. */
+export async function selectMoved(tx: Tx, actor: GroupActor): Promise<number[]> {
   const { rows } = await tx.execute<{ id: number }>(sql`
-    select entry_a as id from verdict_in_force where group_id = ${actor.groupId} and value = 'same'
-    union select entry_b from verdict_in_force where group_id = ${actor.groupId} and value = 'same'
-    union select id from object where group_id = ${actor.groupId} and (merged_into is not null or entries <> 1)
+    select id from object where group_id = ${actor.groupId} and (merged_into is not null or entries <> 1)
     order by id`);
   return rows.map((row) => row.id);
 }
@@ -87,21 +85,21 @@ export async function selectKeptApart(tx: Tx, actor: GroupActor): Promise<number
   return rows.map((row) => row.id);
 }
 
-/** The deciding verdicts in force among a closure of entries. */
+/** The deciding verdicts in force among a closure of entries; all of the group when null. */
 export async function selectEdges(
   tx: Tx,
   actor: GroupActor,
-  entries: readonly number[],
+  entries: readonly number[] | null,
 ): Promise<IdentityEdges> {
   const edges: IdentityEdges = { same: [], different: [], sameIds: [], differentIds: [] };
-  if (entries.length === 0) return edges;
+  const deciding = sql`f.group_id = ${actor.groupId} and f.value in ('same', 'different')`;
+  const from =
+    entries === null
+      ? sql`verdict_in_force f where ${deciding}`
+      : sql`member x join verdict_in_force f on f.entry_a = x.id join member y on y.id = f.entry_b where ${deciding}`;
   const { rows } = await tx.execute<{ a: number; b: number; id: number; value: 'same' | 'different' }>(sql`
-    with member as materialized (select id from unnest(${bigintArray(entries)}) as m (id))
-    select f.entry_a as a, f.entry_b as b, f.verdict_id as id, f.value
-    from member x
-    join verdict_in_force f on f.entry_a = x.id
-    join member y on y.id = f.entry_b
-    where f.group_id = ${actor.groupId} and f.value in ('same', 'different')
+    with member as materialized (select id from unnest(${bigintArray(entries ?? [])}) as m (id))
+    select f.entry_a as a, f.entry_b as b, f.verdict_id as id, f.value from ${from}
     order by f.verdict_id`);
   for (const row of rows) {
     edges[row.value].push([row.a, row.b]);

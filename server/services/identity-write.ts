@@ -43,7 +43,7 @@ export async function writeComponents(
     with part as materialized (
       select id, component from unnest(${bigintArray(ids)}, ${bigintArray(componentOf)}) as p (id, component)),
     born as materialized (
-      select p.component, o.id, o.number, o.merged_into, o.name, o.name_chosen, o.ra_deg, o.dec_deg, o.err_arcsec,
+      select p.component, o.id, o.number, o.merged_into, o.name, o.ra_deg, o.dec_deg, o.err_arcsec,
         first_value(o.id) over by_number as root_id, first_value(o.number) over by_number as root_number,
         count(*) over (partition by p.component) as members
       from part p join object o on o.id = p.id and o.group_id = ${actor.groupId}
@@ -82,7 +82,7 @@ export async function writeComponents(
       select b.id, coalesce(was.number, b.number) as was_number, b.root_number as is_number,
         nullif(b.root_id, b.id) as merged_into,
         case when b.id = b.root_id then b.members else 0 end as entries,
-        case when b.name_chosen then b.name else coalesce(l.designation, b.name) end as name,
+        coalesce(l.designation, b.name) as designation,
         case when b.id = b.root_id and pl.component is not null then pl.ra_deg else b.ra_deg end as ra_deg,
         case when b.id = b.root_id and pl.component is not null then pl.dec_deg else b.dec_deg end as dec_deg,
         case when b.id = b.root_id and pl.component is not null then pl.err_arcsec else b.err_arcsec end as err_arcsec
@@ -91,11 +91,14 @@ export async function writeComponents(
       left join place pl on pl.component = b.component
       left join object was on was.id = b.merged_into),
     written as (
-      update object o set merged_into = n.merged_into, entries = n.entries, name = n.name, ra_deg = n.ra_deg,
-        dec_deg = n.dec_deg, err_arcsec = n.err_arcsec, version = o.version + 1
+      -- The name is decided on the row as it is when its turn comes: somebody may be renaming it just now.
+      update object o set merged_into = n.merged_into, entries = n.entries, ra_deg = n.ra_deg, dec_deg = n.dec_deg,
+        err_arcsec = n.err_arcsec, name = case when o.name_chosen then o.name else n.designation end,
+        version = o.version + 1
       from next n
-      where o.id = n.id and (o.merged_into, o.entries, o.name, o.ra_deg, o.dec_deg, o.err_arcsec)
-        is distinct from (n.merged_into, n.entries, n.name, n.ra_deg, n.dec_deg, n.err_arcsec)
+      where o.id = n.id and (o.merged_into, o.entries, o.ra_deg, o.dec_deg, o.err_arcsec, o.name) is distinct from
+        (n.merged_into, n.entries, n.ra_deg, n.dec_deg, n.err_arcsec,
+          case when o.name_chosen then o.name else n.designation end)
       returning o.number, n.was_number, n.is_number),
     moved as (
       select json_build_object('number', number, 'wasPartOf', was_number, 'isPartOf', is_number) as move

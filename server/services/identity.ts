@@ -2,7 +2,7 @@ import { sql } from 'drizzle-orm';
 import type { Tx } from '../../db/client';
 import type { GroupActor } from '../context';
 import { partitionEntries } from '../engine/partition';
-import { selectAllInvolved, selectConnected, selectEdges, type IdentityEdges } from './identity-edges';
+import { selectConnected, selectEdges, selectMoved, type IdentityEdges } from './identity-edges';
 import { writeComponents, type Written } from './identity-write';
 import { lockRegistry } from './registry-lock';
 import { bigintArray } from './verdict-log';
@@ -33,24 +33,15 @@ export async function applyIdentity(
   scope: IdentityScope,
 ): Promise<IdentityOutcome> {
   await lockRegistry(tx, actor);
-  const entries =
-    scope === 'group' ? await selectAllInvolved(tx, actor) : await selectConnected(tx, actor, scope.entries);
-  await lockObjects(tx, actor, entries);
-  const edges = await selectEdges(tx, actor, entries);
+  const whole = scope === 'group';
+  const entries = whole ? await selectMoved(tx, actor) : await selectConnected(tx, actor, scope.entries);
+  const edges = await selectEdges(tx, actor, whole ? null : entries);
   const { components, refused } = partitionEntries(edges);
   const written = await writeComponents(tx, actor, withSingles(components, entries));
   return { ...written, refused, edges };
 }
 
-/** Locks objects in ascending id, so that nobody renames one between our reading and our writing. */
-async function lockObjects(tx: Tx, actor: GroupActor, ids: readonly number[]): Promise<void> {
-  await tx.execute(sql`
-    select count(*) from (
-      select 1 from object where group_id = ${actor.groupId} and id = any(${bigintArray(ids)})
-      order by id for update) locked`);
-}
-
-/** The partition knows only entries that stand in a verdict; every other one is a component by itself. */
+/** The partition knows only entries that stand in a deciding verdict; every other one is a component by itself. */
 function withSingles(components: readonly number[][], entries: readonly number[]): number[][] {
   const placed = new Set(components.flat());
   const singles = entries.filter((id) => !placed.has(id)).map((id) => [id]);

@@ -55,7 +55,7 @@ async function insertObjects(tx: Tx, actor: GroupActor, revisionId: number): Pro
   const inserted = await tx.execute(sql`
     insert into object (id, group_id, number, ra_deg, dec_deg, err_arcsec, name)
     select s.entry_id, s.group_id, ${group?.next ?? 1}::bigint - 1 + row_number() over (order by s.row_no),
-      s.ra_deg, s.dec_deg, sqrt(s.err_maj_arcsec * s.err_min_arcsec), s.designation
+      s.ra_deg, s.dec_deg, sqrt(s.err_maj_arcsec::float8 * s.err_min_arcsec::float8), s.designation
     from source s
     where s.revision_id = ${revisionId} and not exists (select 1 from object o where o.id = s.entry_id)`);
   await tx

@@ -274,11 +274,12 @@ describe('who may apply policies, and to what', () => {
       (who: 'nobody' | 'contributor' | 'foreign', at: (below: string) => string) =>
         world.agents[who].delete(at(`runs/${run}/policies/${policy?.id}`)),
     ];
+    const here = (below: string) => world.api(below);
     const elsewhere = (below: string) => `/api/groups/${world.foreignGroup}/${below}`;
     for (const call of calls) {
-      expect((await call('nobody', world.api)).status).toBe(401);
-      expect((await call('contributor', world.api)).status).toBe(403);
-      expect((await call('foreign', world.api)).status).toBe(404);
+      expect((await call('nobody', here)).status).toBe(401);
+      expect((await call('contributor', here)).status).toBe(403);
+      expect((await call('foreign', here)).status).toBe(404);
       expect((await call('foreign', elsewhere)).status).toBe(404);
     }
     const other = await world.agents.curator.delete(world.api(`runs/${run}/policies/999`));

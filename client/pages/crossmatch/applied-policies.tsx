@@ -83,9 +83,9 @@ export function AppliedPolicies({
         }}
       >
         <p>
-          Up to {plural(asked?.verdicts ?? 0, 'automatic verdict loses its', 'automatic verdicts lose their')} force: all
-          that nobody has overruled since. Objects that only these verdicts hold together come apart. Verdicts of people
-          stay. The policy can be applied again.
+          Up to {plural(asked?.verdicts ?? 0, 'automatic verdict loses its', 'automatic verdicts lose their')}{' '}
+          force: all that nobody has overruled since. Objects that only these verdicts hold together come
+          apart. Verdicts of people stay. The policy can be applied again.
         </p>
       </ConfirmDialog>
     </div>

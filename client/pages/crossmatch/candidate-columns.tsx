@@ -32,8 +32,20 @@ export function candidateColumns({
       ),
       text: ({ seq }) => String(seq),
     },
-    { id: 'a', header: 'A', widthPx: 190, cell: ({ a }) => <SideName side={a} />, text: ({ a }) => a.designation },
-    { id: 'b', header: 'B', widthPx: 190, cell: ({ b }) => <SideName side={b} />, text: ({ b }) => b.designation },
+    {
+      id: 'a',
+      header: 'A',
+      widthPx: 190,
+      cell: ({ a }) => <SideName side={a} />,
+      text: ({ a }) => a.designation,
+    },
+    {
+      id: 'b',
+      header: 'B',
+      widthPx: 190,
+      cell: ({ b }) => <SideName side={b} />,
+      text: ({ b }) => b.designation,
+    },
     {
       id: 'sep',
       header: 'Separation',

@@ -54,14 +54,20 @@ export function CandidateFilters({
         label="Kind"
         options={KIND_FILTERS.map((value) => ({ value, label: KIND_NAMES[value] }))}
         value={filter.kind}
-        onChange={({ target }) => onChange({ kind: KIND_FILTERS.find((value) => value === target.value) ?? 'any' })}
+        onChange={({ target }) =>
+          onChange({ kind: KIND_FILTERS.find((value) => value === target.value) ?? 'any' })
+        }
       />
       <SepField
         label="Separation from"
         value={filter.minSepArcsec}
         onCommit={(minSepArcsec) => onChange({ minSepArcsec })}
       />
-      <SepField label="to" value={filter.maxSepArcsec} onCommit={(maxSepArcsec) => onChange({ maxSepArcsec })} />
+      <SepField
+        label="to"
+        value={filter.maxSepArcsec}
+        onCommit={(maxSepArcsec) => onChange({ maxSepArcsec })}
+      />
       {run.pairs.length > 1 && (
         <SelectField
           label="Catalogues"

@@ -5,7 +5,10 @@ import { VerdictMark } from '../../components/verdict-mark';
 /** Stamp and designation of one side of a candidate. */
 export function SideName({ side }: { side: Candidate['a'] }) {
   return (
-    <span className="inline-flex max-w-full items-center gap-1.5" title={`${side.catalogue}: ${side.designation}`}>
+    <span
+      className="inline-flex max-w-full items-center gap-1.5"
+      title={`${side.catalogue}: ${side.designation}`}
+    >
       <Stamp catalogue={{ label: side.catalogue, ordinal: side.ordinal }} size={20} />
       <span className="truncate">{side.designation}</span>
     </span>

@@ -21,7 +21,11 @@ export function CandidateTable({ run }: { run: RunDetail }) {
   const navigate = useNavigate();
   const [filter, change] = useCandidateFilter(NO_FILTER);
   const columns = useMemo(
-    () => candidateColumns({ radiusArcsec: run.radiusArcsec, addressOf: (seq) => `../${deskAddress(run.run, filter, seq)}` }),
+    () =>
+      candidateColumns({
+        radiusArcsec: run.radiusArcsec,
+        addressOf: (seq) => `../${deskAddress(run.run, filter, seq)}`,
+      }),
     [run.radiusArcsec, run.run, filter],
   );
   const table = useTableState({ columns, sort: { id: 'sep', order: 'asc' } });
@@ -55,7 +59,10 @@ export function CandidateTable({ run }: { run: RunDetail }) {
           </>
         }
         empty={
-          <EmptyState title="No candidate under this filter" actions={<Button onClick={clear}>All candidates</Button>}>
+          <EmptyState
+            title="No candidate under this filter"
+            actions={<Button onClick={clear}>All candidates</Button>}
+          >
             The cross-match has candidates, but none that meets all of the conditions above.
           </EmptyState>
         }

@@ -22,7 +22,11 @@ export function CatalogueOrder({
   const known = new Map(ready.map((catalogue) => [catalogue.label, catalogue]));
   const others = ready.filter(({ label }) => !chosen.includes(label));
   return (
-    <div className="grid gap-4" role="group" aria-describedby={error === undefined ? undefined : 'order-error'}>
+    <div
+      className="grid gap-4"
+      role="group"
+      aria-describedby={error === undefined ? undefined : 'order-error'}
+    >
       {chosen.length > 0 && (
         <ol className="grid gap-1" aria-label="Chosen, in order">
           {chosen.map((label, index) => {

@@ -28,7 +28,11 @@ export function Diagnosis({ run }: { run: RunDetail }) {
             label="Pairs of catalogues"
             current={shown}
             onChange={setShown}
-            tabs={run.pairs.map((pair) => ({ id: pairId(pair), label: pairName(pair), count: pair.candidates }))}
+            tabs={run.pairs.map((pair) => ({
+              id: pairId(pair),
+              label: pairName(pair),
+              count: pair.candidates,
+            }))}
           />
         )}
         {run.pairs.map((pair) => {

@@ -26,7 +26,8 @@ export function NewRunPage() {
           title="A curator starts cross-matches"
           actions={<LinkButton to="../cross-match">To the cross-matches</LinkButton>}
         >
-          You are a {group.role} of this group. You can look at every cross-match; ask a curator or an owner to start one.
+          You are a {group.role} of this group. You can look at every cross-match; ask a curator or an owner
+          to start one.
         </EmptyState>
       )}
       {group.can('curator') && (
@@ -43,7 +44,9 @@ export function NewRunPage() {
               }
             >
               A cross-match compares catalogues that have been imported.{' '}
-              {ready.data.length === 0 ? 'None is ready yet.' : `Only ${ready.data[0]?.label ?? 'one'} is ready.`}
+              {ready.data.length === 0
+                ? 'None is ready yet.'
+                : `Only ${ready.data[0]?.label ?? 'one'} is ready.`}
             </EmptyState>
           )}
           {ready.data !== undefined && ready.data.length >= 2 && (
@@ -66,24 +69,25 @@ function Cautions() {
   return (
     <>
       <MarginNote title="The radius is a limit, not a verdict">
-        It only says which pairs are listed. Take it generously, several times the errors: what lies inside is measured
-        and judged afterwards, what lies outside is never seen.
+        It only says which pairs are listed. Take it generously, several times the errors: what lies inside is
+        measured and judged afterwards, what lies outside is never seen.
       </MarginNote>
       <MarginNote title="A beam is not an error">
-        The resolution of an instrument tells how blurred a source is, its positional error how well its middle is known.
-        For a bright source the error is a small part of the beam. The radius should follow the errors.
+        The resolution of an instrument tells how blurred a source is, its positional error how well its
+        middle is known. For a bright source the error is a small part of the beam. The radius should follow
+        the errors.
       </MarginNote>
       <MarginNote title="Close is evidence, not proof">
-        In a crowded field, chance alone puts sources next to each other. Each cross-match measures how many such pairs
-        there are by shifting the first catalogue and comparing again.
+        In a crowded field, chance alone puts sources next to each other. Each cross-match measures how many
+        such pairs there are by shifting the first catalogue and comparing again.
       </MarginNote>
       <MarginNote title="Motions are not applied">
-        Positions are compared as they stand, each at its own epoch. A star that moves 0.2″ a year is 3.2″ away after 16
-        years. Where epochs differ, fast sources fall outside a small radius.
+        Positions are compared as they stand, each at its own epoch. A star that moves 0.2″ a year is 3.2″
+        away after 16 years. Where epochs differ, fast sources fall outside a small radius.
       </MarginNote>
       <MarginNote title="A and B">
-        The first catalogue is A. Ranks and position angles are given from A to B; chance pairs are measured by shifting
-        A. The candidates are the same in either order.
+        The first catalogue is A. Ranks and position angles are given from A to B; chance pairs are measured
+        by shifting A. The candidates are the same in either order.
       </MarginNote>
     </>
   );

@@ -90,8 +90,8 @@ function PairFigures({ pair, radiusArcsec }: { pair: PairStatistics; radiusArcse
         <Fact name={`of ${pair.a}`}>{formatCount(pair.sourcesAWithCandidate)} sources have a candidate</Fact>
         <Fact name={`of ${pair.b}`}>{formatCount(pair.sourcesBWithCandidate)} sources have a candidate</Fact>
         <Fact name="by chance">
-          {formatFixed(pair.chancePairs, pair.chancePairs < 10 ? 1 : 0)} of {formatCount(pair.candidates)} within{' '}
-          {formatSepArcsec(radiusArcsec)}
+          {formatFixed(pair.chancePairs, pair.chancePairs < 10 ? 1 : 0)} of {formatCount(pair.candidates)}{' '}
+          within {formatSepArcsec(radiusArcsec)}
         </Fact>
       </dl>
       <div className="grid content-start gap-3">
@@ -108,7 +108,11 @@ function PairFigures({ pair, radiusArcsec }: { pair: PairStatistics; radiusArcse
           </Fact>
         </dl>
         {median !== null && (
-          <Ruler label="Median separation" marks={[{ sepArcsec: median, label: 'median' }]} limitArcsec={radiusArcsec} />
+          <Ruler
+            label="Median separation"
+            marks={[{ sepArcsec: median, label: 'median' }]}
+            limitArcsec={radiusArcsec}
+          />
         )}
         <p className="text-xs text-muted">
           {pair.b} minus {pair.a}, over the mutual best pairs. Shown, not applied.

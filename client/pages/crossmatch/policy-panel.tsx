@@ -36,11 +36,17 @@ export function PolicyPanel({
   return (
     <Section title="Policy for clear cases">
       {group.can('curator') ? (
-        <RuleWithCount run={run} draft={draft} onDraft={onDraft} busy={openJob !== null} onStarted={setStartedJob} />
+        <RuleWithCount
+          run={run}
+          draft={draft}
+          onDraft={onDraft}
+          busy={openJob !== null}
+          onStarted={setStartedJob}
+        />
       ) : (
         <p className="max-w-prose text-muted">
-          A curator can let a rule decide the clear cases of this cross-match. You are a {group.role}: you see what rules
-          have decided.
+          A curator can let a rule decide the clear cases of this cross-match. You are a {group.role}: you see
+          what rules have decided.
         </p>
       )}
       {jobId !== null && <JobCard key={jobId} group={group.slug} jobId={jobId} onFinished={onFinished} />}
@@ -129,7 +135,11 @@ function RuleWithCount({
 function CountFigures({ count, stale }: { count: PolicyCount; stale: boolean }) {
   return (
     <dl
-      className={stale ? 'grid grid-cols-[auto_1fr] gap-x-3 gap-y-1 opacity-60' : 'grid grid-cols-[auto_1fr] gap-x-3 gap-y-1'}
+      className={
+        stale
+          ? 'grid grid-cols-[auto_1fr] gap-x-3 gap-y-1 opacity-60'
+          : 'grid grid-cols-[auto_1fr] gap-x-3 gap-y-1'
+      }
       aria-busy={stale || undefined}
       aria-live="polite"
     >
@@ -156,8 +166,8 @@ function ConfirmText({ rule, count }: { rule: PolicyRule; count: PolicyCount }) 
   return (
     <>
       <p>
-        Rule: {ruleText(rule)}. {plural(count.automatic, 'candidate becomes', 'candidates become')} &lsquo;same&rsquo;,
-        each shown as automatic; their objects are merged.
+        Rule: {ruleText(rule)}. {plural(count.automatic, 'candidate becomes', 'candidates become')}{' '}
+        &lsquo;same&rsquo;, each shown as automatic; their objects are merged.
       </p>
       <p>
         {plural(count.toReview, 'candidate stays', 'candidates stay')} for people

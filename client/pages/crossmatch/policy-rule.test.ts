@@ -22,11 +22,19 @@ describe('proposedSepArcsec', () => {
 
 describe('a rule while it is typed', () => {
   it('is a rule once the separation can be read', () => {
-    expect(ruleOfDraft(DRAFT)).toEqual({ maxSepArcsec: 0.5, mutualBest: true, noRival: true, grade: 'certain' });
+    expect(ruleOfDraft(DRAFT)).toEqual({
+      maxSepArcsec: 0.5,
+      mutualBest: true,
+      noRival: true,
+      grade: 'certain',
+    });
   });
 
-  it.each(['', ' ', '0', '-1', 'wide', '3601', 'NaN', 'Infinity'])('is none with a separation of "%s"', (text) => {
-    expect(draftSepArcsec({ maxSepText: text })).toBeNull();
-    expect(ruleOfDraft({ ...DRAFT, maxSepText: text })).toBeNull();
-  });
+  it.each(['', ' ', '0', '-1', 'wide', '3601', 'NaN', 'Infinity'])(
+    'is none with a separation of "%s"',
+    (text) => {
+      expect(draftSepArcsec({ maxSepText: text })).toBeNull();
+      expect(ruleOfDraft({ ...DRAFT, maxSepText: text })).toBeNull();
+    },
+  );
 });

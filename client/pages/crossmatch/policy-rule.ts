@@ -1,4 +1,9 @@
-import { MAX_RADIUS_ARCSEC, policyRule, type PairStatistics, type PolicyRule } from '../../../shared/schemas/run';
+import {
+  MAX_RADIUS_ARCSEC,
+  policyRule,
+  type PairStatistics,
+  type PolicyRule,
+} from '../../../shared/schemas/run';
 import { radiusOfShareArcsec, sigmaOfShareArcsec } from '../../../shared/astro/errors';
 import type { Grade } from '../../../shared/words';
 

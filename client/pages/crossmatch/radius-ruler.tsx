@@ -63,10 +63,10 @@ export function RadiusRuler({
       {radius !== null &&
         radiusShares(details, radius).map(({ a, b, sigmaArcsec, share }) => (
           <p key={`${a} ${b}`}>
-            {a} and {b}: the radius is {formatFixed(radius / sigmaArcsec, 1)} times their combined median error (
-            {formatSepArcsec(sigmaArcsec)}) and holds{' '}
-            {share > 0.9999 ? 'more than 99.99\u2009%' : formatShare(share, 2)} of the true pairs, if the errors are as
-            stated and nothing is shifted.
+            {a} and {b}: the radius is {formatFixed(radius / sigmaArcsec, 1)} times their combined median
+            error ({formatSepArcsec(sigmaArcsec)}) and holds{' '}
+            {share > 0.9999 ? 'more than 99.99\u2009%' : formatShare(share, 2)} of the true pairs, if the
+            errors are as stated and nothing is shifted.
           </p>
         ))}
       <EpochNotes catalogues={known} />
@@ -86,15 +86,17 @@ function EpochNotes({ catalogues }: { catalogues: readonly CatalogueSummary[] })
             epochs differ
           </StatusChip>
           <span>
-            {a.label} {epochText(a.epochYear)}, {b.label} {epochText(b.epochYear)}: {formatFixed(years, 1)} years apart.
-            Proper motions are not applied: 100 mas a year make {formatSepArcsec(years * 0.1)}.
+            {a.label} {epochText(a.epochYear)}, {b.label} {epochText(b.epochYear)}: {formatFixed(years, 1)}{' '}
+            years apart. Proper motions are not applied: 100 mas a year make {formatSepArcsec(years * 0.1)}.
           </span>
         </li>
       ))}
       {unknown.length > 0 && (
         <li className="flex flex-wrap items-baseline gap-2">
           <StatusChip icon="?">epoch not stated</StatusChip>
-          <span>{unknown.map(({ label }) => label).join(', ')}: how far sources have moved cannot be said.</span>
+          <span>
+            {unknown.map(({ label }) => label).join(', ')}: how far sources have moved cannot be said.
+          </span>
         </li>
       )}
     </ul>

@@ -35,12 +35,12 @@ export function RunMargin({ run }: { run: RunDetail }) {
       </MarginNote>
       <MarginNote title="What the numbers mean">
         <p>
-          A candidate is a pair within {formatSepArcsec(run.radiusArcsec)}. <em>Mutual best</em>: each is the nearest
-          candidate of the other. <em>Crowded</em>: one of the two has further candidates, its rivals.
+          A candidate is a pair within {formatSepArcsec(run.radiusArcsec)}. <em>Mutual best</em>: each is the
+          nearest candidate of the other. <em>Crowded</em>: one of the two has further candidates, its rivals.
         </p>
         <p>
-          Chance pairs are measured: the first catalogue is shifted eight times and compared again. Where a shifted field
-          leaves the other catalogue, chance is underestimated.
+          Chance pairs are measured: the first catalogue is shifted eight times and compared again. Where a
+          shifted field leaves the other catalogue, chance is underestimated.
         </p>
         <p>Numbers from fewer than {FEW_PAIRS} pairs are marked: they say little.</p>
       </MarginNote>
@@ -48,14 +48,15 @@ export function RunMargin({ run }: { run: RunDetail }) {
         <MarginNote title="Epochs differ">
           {gaps.map(({ a, b, years }) => (
             <p key={`${a.label} ${b.label}`}>
-              {a.label} and {b.label} are {years.toFixed(1)} years apart. Proper motions are not applied: fast sources
-              lie off, or outside.
+              {a.label} and {b.label} are {years.toFixed(1)} years apart. Proper motions are not applied: fast
+              sources lie off, or outside.
             </p>
           ))}
         </MarginNote>
       )}
       <MarginNote title="Caution">
-        A close position is evidence, not proof. Nothing here takes the place of reading the catalogues&rsquo; own papers.
+        A close position is evidence, not proof. Nothing here takes the place of reading the catalogues&rsquo;
+        own papers.
       </MarginNote>
     </>
   );

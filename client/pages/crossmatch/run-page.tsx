@@ -112,11 +112,13 @@ function RunResult({ run }: { run: RunDetail }) {
       <EmptyState
         title="No two sources are this close"
         actions={
-          group.can('curator') && <LinkButton to={`../${againAddress(run)}`}>Again with a larger radius</LinkButton>
+          group.can('curator') && (
+            <LinkButton to={`../${againAddress(run)}`}>Again with a larger radius</LinkButton>
+          )
         }
       >
-        No pair of sources lies within {formatSepArcsec(run.radiusArcsec)}. Look at the coverage of the catalogues: do
-        they overlap on the sky, and are all positions in degrees of the same frame?
+        No pair of sources lies within {formatSepArcsec(run.radiusArcsec)}. Look at the coverage of the
+        catalogues: do they overlap on the sky, and are all positions in degrees of the same frame?
       </EmptyState>
     );
   }

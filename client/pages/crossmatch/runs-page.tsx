@@ -98,12 +98,13 @@ function ListNotes() {
   return (
     <>
       <MarginNote title="What a cross-match does">
-        It lists every pair of sources closer than its radius, ranks them from either side, and measures how many such
-        pairs chance alone would make. It decides nothing: verdicts come from people, or from a rule that a curator sets.
+        It lists every pair of sources closer than its radius, ranks them from either side, and measures how
+        many such pairs chance alone would make. It decides nothing: verdicts come from people, or from a rule
+        that a curator sets.
       </MarginNote>
       <MarginNote title="It stays as it was">
-        A cross-match keeps the revisions of its catalogues, its radius and the version of the software. For other
-        settings start another one; verdicts belong to the pair of sources and are seen in both.
+        A cross-match keeps the revisions of its catalogues, its radius and the version of the software. For
+        other settings start another one; verdicts belong to the pair of sources and are seen in both.
       </MarginNote>
     </>
   );

@@ -1,4 +1,10 @@
-import { keepPreviousData, useMutation, useQuery, useQueryClient, type QueryClient } from '@tanstack/react-query';
+import {
+  keepPreviousData,
+  useMutation,
+  useQuery,
+  useQueryClient,
+  type QueryClient,
+} from '@tanstack/react-query';
 import { jobAccepted, jobList } from '../../../shared/schemas/job';
 import {
   policyCount,
@@ -63,7 +69,12 @@ export function useApplyPolicy(group: string, run: number) {
   const client = useQueryClient();
   return useMutation({
     mutationFn: (rule: PolicyRule) =>
-      request({ method: 'POST', path: groupPath(group, 'runs', run, 'policies'), body: rule, answer: jobAccepted }),
+      request({
+        method: 'POST',
+        path: groupPath(group, 'runs', run, 'policies'),
+        body: rule,
+        answer: jobAccepted,
+      }),
     onSuccess: () => client.invalidateQueries({ queryKey: keys.jobs(group) }),
   });
 }
@@ -87,7 +98,12 @@ export function useOpenPolicyJob(group: string, run: number): string | null {
   const open = useQuery({
     queryKey: [...keys.jobs(group), 'open'],
     queryFn: ({ signal }) =>
-      request({ path: groupPath(group, 'jobs'), query: { which: 'open', limit: 100 }, answer: jobList, signal }),
+      request({
+        path: groupPath(group, 'jobs'),
+        query: { which: 'open', limit: 100 },
+        answer: jobList,
+        signal,
+      }),
   });
   const mine = open.data?.items.find((job) => job.kind === 'policy' && job.link === `cross-match/${run}`);
   return mine?.id ?? null;

@@ -13,13 +13,18 @@ export function VerdictFigures({ run }: { run: RunDetail }) {
     <div className="grid gap-2">
       <dl className="grid grid-cols-2 gap-4 sm:grid-cols-4">
         {([null, 'same', 'different', 'unsure'] as const).map((value) => (
-          <Figure key={value ?? 'undecided'} run={run.run} value={value} count={verdicts[value ?? 'undecided']} />
+          <Figure
+            key={value ?? 'undecided'}
+            run={run.run}
+            value={value}
+            count={verdicts[value ?? 'undecided']}
+          />
         ))}
       </dl>
       <p className="text-muted">
         {formatCount(decided)} of {formatCount(candidates)} candidates decided
-        {candidates > 0 && ` (${formatShare(decided / candidates)})`}, {formatCount(verdicts.automatic)} of them by
-        policy.
+        {candidates > 0 && ` (${formatShare(decided / candidates)})`}, {formatCount(verdicts.automatic)} of
+        them by policy.
       </p>
     </div>
   );

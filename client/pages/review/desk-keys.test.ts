@@ -7,7 +7,12 @@ const PLAIN = { ctrlKey: false, metaKey: false, altKey: false, shiftKey: false }
 
 /** What the page does on a press, by the same rule that listens in the page. */
 function actOf(key: string, mayDecide: boolean, modifiers = PLAIN): DeskAct | null {
-  const keys = deskKeysFor(mayDecide).map(({ key: name, label, act }) => ({ key: name, label, act, action: () => {} }));
+  const keys = deskKeysFor(mayDecide).map(({ key: name, label, act }) => ({
+    key: name,
+    label,
+    act,
+    action: () => {},
+  }));
   const bound = bindingFor(keys, { key, ...modifiers });
   return keys.find((one) => one === bound)?.act ?? null;
 }
@@ -17,11 +22,18 @@ describe('keys of the desk', () => {
     expect(actOf('s', true)).toEqual({ kind: 'verdict', value: 'same' });
     expect(actOf('d', true)).toEqual({ kind: 'verdict', value: 'different' });
     expect(actOf('u', true)).toEqual({ kind: 'verdict', value: 'unsure' });
-    expect(['1', '2', '3'].map((key) => actOf(key, true))).toEqual(GRADES.map((grade) => ({ kind: 'grade', grade })));
+    expect(['1', '2', '3'].map((key) => actOf(key, true))).toEqual(
+      GRADES.map((grade) => ({ kind: 'grade', grade })),
+    );
   });
 
   it('move, undo and write', () => {
-    expect(['n', 'b', 'z', 'r'].map((key) => actOf(key, true)?.kind)).toEqual(['next', 'back', 'undo', 'remark']);
+    expect(['n', 'b', 'z', 'r'].map((key) => actOf(key, true)?.kind)).toEqual([
+      'next',
+      'back',
+      'undo',
+      'remark',
+    ]);
   });
 
   it('leave the browser its own keys', () => {

@@ -1,6 +1,13 @@
 import { describe, expect, it } from 'vitest';
 import type { NewVerdict, VerdictResult } from '../../../shared/schemas/verdict';
-import { givenAfter, isOnItsWay, needsAttention, undoable, type Given, type GivenEvent } from './given-verdicts';
+import {
+  givenAfter,
+  isOnItsWay,
+  needsAttention,
+  undoable,
+  type Given,
+  type GivenEvent,
+} from './given-verdicts';
 
 const BODY: NewVerdict = {
   entryA: 1,
