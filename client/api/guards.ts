@@ -1,6 +1,6 @@
 import { redirect, type LoaderFunctionArgs } from 'react-router-dom';
 import type { SessionState } from '../../shared/schemas/session';
-import { ProblemError } from './problem-error';
+import { noSuchGroup } from './problem-error';
 import { queryClient } from './query-client';
 import { sessionQuery } from './session';
 
@@ -34,18 +34,12 @@ export async function needsPerson({ request }: LoaderFunctionArgs): Promise<Sess
   return state;
 }
 
-/** Guard of the pages of a group: a foreign group and a missing one look the same. */
+/** Guard of the pages of a group. */
 export async function needsMembership(args: LoaderFunctionArgs): Promise<Response | null> {
   const state = await needsPerson(args);
   if (state instanceof Response) return state;
   if (state.memberships.some(({ group }) => group === args.params.group)) return null;
-  throw new ProblemError({
-    code: 'not-found',
-    status: 404,
-    title: 'No such group',
-    detail: `There is no group '${args.params.group ?? ''}' among yours.`,
-    hint: 'Check the address, or ask an owner of the group to add you.',
-  });
+  throw noSuchGroup(args.params.group ?? '');
 }
 
 /** '/' leads to where the person begins. */

@@ -43,6 +43,17 @@ export function stopped(): ProblemError {
   });
 }
 
+/** A foreign group and a missing one look the same. */
+export function noSuchGroup(group: string): ProblemError {
+  return new ProblemError({
+    code: 'not-found',
+    status: 404,
+    title: 'No such group',
+    detail: `There is no group '${group}' among yours.`,
+    hint: 'Check the address, or ask an owner of the group to add you.',
+  });
+}
+
 /** An answer that does not keep to the contract; most often a page older than the server. */
 export function answerNotUnderstood(status: number, path: string): ProblemError {
   return new ProblemError({

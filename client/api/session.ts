@@ -2,10 +2,18 @@ import { queryOptions, useMutation, useQueryClient, useSuspenseQuery } from '@ta
 import { sessionState, type SessionState, type SetUp, type SignIn } from '../../shared/schemas/session';
 import { keys } from './query-keys';
 import { request } from './request';
+import { sessionEnd } from './session-end';
 
 export const sessionQuery = queryOptions({
   queryKey: keys.session,
-  queryFn: ({ signal }) => request({ path: '/api/session', answer: sessionState, signal }),
+  queryFn: async ({ signal, client }) => {
+    const heard = await request({ path: '/api/session', answer: sessionState, signal });
+    const known = client.getQueryData<SessionState>(keys.session);
+    if (heard.person !== null || !known?.person) return heard;
+    // Ended elsewhere while a page is open: the page stays and the sign-in comes over it.
+    sessionEnd.announce();
+    return known;
+  },
   staleTime: 60_000,
 });
 
@@ -14,12 +22,14 @@ export function useSession(): SessionState {
   return useSuspenseQuery(sessionQuery).data;
 }
 
-/** Signs in; the session is known again when the promise ends. */
+/** Signs in and answers with the new session. */
 export function useSignIn() {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: SignIn) => request({ method: 'POST', path: '/api/session', body }),
-    onSuccess: () => queryClient.fetchQuery({ ...sessionQuery, staleTime: 0 }),
+    mutationFn: async (body: SignIn) => {
+      await request({ method: 'POST', path: '/api/session', body });
+      return queryClient.fetchQuery({ ...sessionQuery, staleTime: 0 });
+    },
   });
 }
 
@@ -27,8 +37,10 @@ export function useSignIn() {
 export function useSetUp() {
   const queryClient = useQueryClient();
   return useMutation({
-    mutationFn: (body: SetUp) => request({ method: 'POST', path: '/api/setup', body }),
-    onSuccess: () => queryClient.fetchQuery({ ...sessionQuery, staleTime: 0 }),
+    mutationFn: async (body: SetUp) => {
+      await request({ method: 'POST', path: '/api/setup', body });
+      return queryClient.fetchQuery({ ...sessionQuery, staleTime: 0 });
+    },
   });
 }
 

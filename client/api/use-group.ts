@@ -1,5 +1,6 @@
 import { useParams } from 'react-router-dom';
 import { roleAtLeast, type Role } from '../../shared/words';
+import { noSuchGroup } from './problem-error';
 import { useSession } from './session';
 
 export interface CurrentGroup {
@@ -14,7 +15,7 @@ export interface CurrentGroup {
 export function useGroup(): CurrentGroup {
   const slug = useParams().group ?? '';
   const membership = useSession().memberships.find((one) => one.group === slug);
-  if (membership === undefined) throw new Error(`no membership in the group '${slug}'`);
+  if (membership === undefined) throw noSuchGroup(slug);
   const { name, role } = membership;
   return { slug, name, role, can: (needed) => roleAtLeast(role, needed) };
 }

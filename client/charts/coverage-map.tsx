@@ -1,11 +1,21 @@
 import { useId, useMemo } from 'react';
 import { geoPath } from 'd3-geo';
-import { formatCount, formatFixed, plural } from '../components/quantities';
+import { formatFixed, plural } from '../components/quantities';
 import { stampOf } from '../components/stamp-rule';
 import { useElementWidth } from '../components/use-element-width';
 import { ChartTable } from './chart-table';
-import { graticule, PLOT_BOTTOM_PX, PLOT_LEFT_PX, type GraticuleLine } from './sky-graticule';
-import { countClasses, outlines, skyMap, type CoverageCell, type SkyMap } from './sky-projection';
+import { CoverageLegend, GraticuleNumbers } from './coverage-parts';
+import { classOpacity, countClasses } from './coverage-classes';
+import { graticule } from './sky-graticule';
+import {
+  countClasses,
+  outlines,
+  PLOT_BOTTOM_PX,
+  PLOT_LEFT_PX,
+  skyMap,
+  type CoverageCell,
+  type SkyMap,
+} from './sky-projection';
 
 const MOST_PX = 620;
 const CLASSES = 5;
@@ -48,7 +58,7 @@ export function CoverageMap({
         bounds={bounds}
       />
       <figcaption className="grid gap-1 text-xs text-muted">
-        <Legend bounds={bounds} colour={colour} />
+        <CoverageLegend bounds={bounds} colour={colour} />
         Sources per cell of {formatFixed(cellSizeDeg, cellSizeDeg < 0.1 ? 3 : 2)}° by{' '}
         {formatFixed(cellSizeDeg, cellSizeDeg < 0.1 ? 3 : 2)}°. Equal-area, RA and Dec in degrees, east left.
       </figcaption>
@@ -59,10 +69,6 @@ export function CoverageMap({
       />
     </figure>
   );
-}
-
-function opacityOf(index: number, classes: number): number {
-  return classes <= 1 ? 0.7 : 0.16 + (0.74 * index) / (classes - 1);
 }
 
 function Picture({
@@ -106,7 +112,7 @@ function Picture({
       </clipPath>
       <g clipPath={`url(#${clipId})`}>
         {drawn.layers.map((path, index) => (
-          <path key={index} d={path} fill={colour} fillOpacity={opacityOf(index, bounds.length)} />
+          <path key={index} d={path} fill={colour} fillOpacity={classOpacity(index, bounds.length)} />
         ))}
         <path d={drawn.lines} fill="none" stroke="var(--edge)" strokeWidth={0.75} strokeDasharray="1 3" />
       </g>
@@ -122,8 +128,8 @@ function Picture({
           stroke="var(--edge)"
         />
       )}
-      <Numbers lines={drawn.ra} whole={drawn.whole} edge="bottom" />
-      <Numbers lines={drawn.dec} whole={drawn.whole} edge="left" />
+      <GraticuleNumbers lines={drawn.ra} whole={drawn.whole} edge="bottom" />
+      <GraticuleNumbers lines={drawn.dec} whole={drawn.whole} edge="left" />
     </svg>
   );
 }
@@ -145,69 +151,4 @@ function drawing(
   });
   const lines = [...ra, ...dec].map(({ line }) => path(line) ?? '').join('');
   return { layers, lines, ra, dec, outline: path({ type: 'Sphere' }) ?? '', whole: map.radiusDeg === null };
-}
-
-function Numbers({
-  lines,
-  whole,
-  edge,
-}: {
-  lines: readonly GraticuleLine[];
-  whole: boolean;
-  edge: 'bottom' | 'left';
-}) {
-  const side = edge === 'left' && !whole;
-  return (
-    <g fontSize={11} fill="var(--muted)" aria-hidden="true">
-      {lines.map(({ text, at }) =>
-        at === null ? null : (
-          <text
-            key={text}
-            x={side ? at.x - 4 : at.x}
-            y={edge === 'bottom' && !whole ? at.y + 14 : at.y}
-            dy={edge === 'bottom' && !whole ? 0 : 4}
-            textAnchor={side ? 'end' : 'middle'}
-            {...(whole
-              ? { stroke: 'var(--raised)', strokeWidth: 5, strokeLinejoin: 'round', paintOrder: 'stroke' }
-              : {})}
-          >
-            {text}
-          </text>
-        ),
-      )}
-    </g>
-  );
-}
-
-function Legend({ bounds, colour }: { bounds: readonly number[]; colour: string }) {
-  return (
-    <span className="flex flex-wrap gap-x-4 gap-y-1">
-      {bounds.map((bound, index) => {
-        const next = bounds[index + 1];
-        const text =
-          next === undefined
-            ? `${formatCount(bound)} or more`
-            : next - 1 === bound
-              ? formatCount(bound)
-              : `${formatCount(bound)} to ${formatCount(next - 1)}`;
-        return (
-          <span key={bound} className="inline-flex items-center gap-1.5">
-            <svg width={14} height={14} aria-hidden="true">
-              <rect width={14} height={14} fill="var(--raised)" />
-              <rect
-                x={0.5}
-                y={0.5}
-                width={13}
-                height={13}
-                fill={colour}
-                fillOpacity={opacityOf(index, bounds.length)}
-                stroke="var(--edge)"
-              />
-            </svg>
-            {text}
-          </span>
-        );
-      })}
-    </span>
-  );
 }

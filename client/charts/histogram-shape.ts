@@ -1,5 +1,26 @@
 import type { Scale } from './scales';
 
+/** Room around the plot for axes and their words, px. */
+export const HISTOGRAM_FRAME = { leftPx: 58, rightPx: 14, topPx: 14, bottomPx: 44 } as const;
+
+export interface HistogramProps {
+  /** Names the chart: 'Separations of A and B'. */
+  title: string;
+  /** Rising bin edges, one more than counts, in xUnit. */
+  edges: readonly number[];
+  counts: readonly number[];
+  /** A component drawn over the counts, e.g. the expected chance pairs per bin. */
+  overlay?: { label: string; values: readonly number[] };
+  /** What the bars are, for the legend. */
+  countsLabel?: string;
+  xLabel: string;
+  xUnit?: string;
+  yLabel: string;
+  /** A limit mark; with `onChange` it can be dragged and moved with the arrow keys. */
+  limit?: { value: number; label: string; onChange?: (value: number) => void };
+  heightPx?: number;
+}
+
 /** Refuses what cannot be drawn: edges must rise and be one more than the counts. */
 export function checkBins(edges: readonly number[], counts: readonly number[]): void {
   if (edges.length !== counts.length + 1) {

@@ -1,7 +1,7 @@
 /** Lines of equal RA and Dec for the coverage picture, with the places of their numbers. */
 import type { LineString, Position } from 'geojson';
 import { linearTicks, tickStep, tickText } from './scales';
-import type { SkyMap } from './sky-projection';
+import { PLOT_BOTTOM_PX, PLOT_LEFT_PX, type SkyMap } from './sky-projection';
 
 interface Place {
   x: number;
@@ -60,9 +60,6 @@ export function graticule(
     }),
   };
 }
-
-export const PLOT_LEFT_PX = 34;
-export const PLOT_BOTTOM_PX = 20;
 
 /** Where a line leaves the picture at an edge: between the sample inside and the one outside. */
 function edgePlace(

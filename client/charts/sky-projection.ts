@@ -10,6 +10,10 @@ export interface CoverageCell {
   count: number;
 }
 
+/** Room for the numbers left of and below the plot, and between plot edge and cells. */
+export const PLOT_LEFT_PX = 50;
+export const PLOT_BOTTOM_PX = 20;
+const INSET_PX = 12;
 /** Fields larger than this radius are shown on a map of the whole sky. */
 const WHOLE_SKY_FROM_DEG = 60;
 /** Side of an order-0 HEALPix cell taken as a square: sqrt of a twelfth of the sphere, degrees. */
@@ -99,10 +103,9 @@ export function skyMap(
   widthPx: number,
   heightPx: number,
 ): SkyMap {
-  const edge = 34;
   const extent: [[number, number], [number, number]] = [
-    [edge, 12],
-    [widthPx - 12, heightPx - edge],
+    [PLOT_LEFT_PX + INSET_PX, INSET_PX],
+    [widthPx - INSET_PX, heightPx - PLOT_BOTTOM_PX - INSET_PX],
   ];
   const field = fieldOf(cells, cellSizeDeg);
   if (field === null || field.radiusDeg > WHOLE_SKY_FROM_DEG) {
@@ -116,12 +119,4 @@ export function skyMap(
     .precision(0.1)
     .fitExtent(extent, outlines(cells, cellSizeDeg));
   return { projection, radiusDeg, centre };
-}
-
-/** Bounds of at most `most` classes of counts, each holding counts >= its bound; the first bound is 1. */
-export function countClasses(cells: readonly CoverageCell[], most: number): number[] {
-  const top = cells.reduce((high, cell) => Math.max(high, cell.count), 0);
-  if (top <= 1) return [1];
-  const bounds = Array.from({ length: most }, (_, i) => Math.max(1, Math.round((top + 1) ** (i / most))));
-  return [...new Set(bounds)];
 }

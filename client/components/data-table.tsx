@@ -1,10 +1,10 @@
-import { useEffect, useRef, type CSSProperties, type ReactNode } from 'react';
+import { useEffect, useRef, type CSSProperties, type ReactNode, type RefObject } from 'react';
 import { useVirtualizer } from '@tanstack/react-virtual';
-import { classNames } from './class-names';
 import { Loading } from './loading';
 import { ProblemNotice } from './problem-notice';
 import { columnWidthPx, visibleColumns, type Column } from './table-column';
 import { TableHead } from './table-head';
+import { LoadingRow, TableRow } from './table-row';
 import { TableTools } from './table-tools';
 import type { TableState } from './use-table-state';
 
@@ -77,12 +77,12 @@ function TableBody<Row>({
   rowHeightPx = ROW_PX,
 }: DataTableProps<Row> & { shown: Column<Row>[] }) {
   const region = useRef<HTMLDivElement>(null);
-  const virtual = useVirtualizer({
+  const currentIndex = currentKey === null ? -1 : rows.findIndex((row) => rowKey(row) === currentKey);
+  const virtual = useVirtualRows({
+    region,
     count: rows.length + (hasMore ? 1 : 0),
-    getScrollElement: () => region.current,
-    estimateSize: () => rowHeightPx,
-    overscan: 12,
-    scrollPaddingStart: rowHeightPx,
+    rowHeightPx,
+    currentIndex,
   });
   const items = virtual.getVirtualItems();
   const lastIndex = items.at(-1)?.index ?? 0;
@@ -91,10 +91,6 @@ function TableBody<Row>({
   useEffect(() => {
     if (wantsMore) loadMore?.();
   }, [wantsMore, loadMore, rows.length]);
-  const currentIndex = currentKey === null ? -1 : rows.findIndex((row) => rowKey(row) === currentKey);
-  useEffect(() => {
-    if (currentIndex >= 0) virtual.scrollToIndex(currentIndex, { align: 'auto' });
-  }, [currentIndex, virtual]);
 
   const grid: CSSProperties = {
     gridTemplateColumns: shown.map((c) => `minmax(${columnWidthPx(c)}px, ${columnWidthPx(c)}fr)`).join(' '),
@@ -131,29 +127,15 @@ function TableBody<Row>({
             if (row === undefined) return <LoadingRow key="loading" style={place} columns={shown.length} />;
             const key = rowKey(row);
             return (
-              <div
+              <TableRow
                 key={key}
-                role="row"
-                aria-rowindex={item.index + 2}
-                aria-current={key === currentKey || undefined}
-                onClick={onRowClick === undefined ? undefined : () => onRowClick(row)}
+                row={row}
+                index={item.index}
+                columns={shown}
+                current={key === currentKey}
+                onClick={onRowClick}
                 style={place}
-                className={classNames(
-                  'absolute top-0 left-0 grid w-full items-center border-b border-rule hover:bg-sunken',
-                  onRowClick !== undefined && 'cursor-pointer',
-                  key === currentKey && 'bg-sunken shadow-[inset_3px_0_0_var(--accent)]',
-                )}
-              >
-                {shown.map((column) => (
-                  <div
-                    key={column.id}
-                    role="cell"
-                    className={classNames('truncate px-2.5', column.numeric === true && 'text-right')}
-                  >
-                    {column.cell(row)}
-                  </div>
-                ))}
-              </div>
+              />
             );
           })}
         </div>
@@ -162,12 +144,23 @@ function TableBody<Row>({
   );
 }
 
-function LoadingRow({ style, columns }: { style: CSSProperties; columns: number }) {
-  return (
-    <div role="row" style={style} className="absolute top-0 left-0 flex w-full items-center">
-      <div role="cell" aria-colspan={columns} className="sticky left-0 px-2.5 text-muted">
-        Loading more…
-      </div>
-    </div>
-  );
+/** Which rows are in sight; brings the marked row into sight when it changes. */
+function useVirtualRows(plan: {
+  region: RefObject<HTMLDivElement | null>;
+  count: number;
+  rowHeightPx: number;
+  currentIndex: number;
+}) {
+  const { region, count, rowHeightPx, currentIndex } = plan;
+  const virtual = useVirtualizer({
+    count,
+    getScrollElement: () => region.current,
+    estimateSize: () => rowHeightPx,
+    overscan: 12,
+    scrollPaddingStart: rowHeightPx,
+  });
+  useEffect(() => {
+    if (currentIndex >= 0) virtual.scrollToIndex(currentIndex, { align: 'auto' });
+  }, [currentIndex, virtual]);
+  return virtual;
 }

@@ -36,9 +36,13 @@ function FindBox({ group, asked }: { group: string; asked: string }) {
     input.current?.blur();
     void navigate(address);
   };
+  const openObject = (number: number) => {
+    setText('');
+    go(`/g/${group}/objects/${number}`);
+  };
   const submit = () => {
     const suggestion = shown ? suggestions[chosen] : undefined;
-    if (suggestion !== undefined) go(`/g/${group}/objects/${suggestion.number}`);
+    if (suggestion !== undefined) openObject(suggestion.number);
     else if (text.trim() !== '') go(`/g/${group}/find?q=${encodeURIComponent(text.trim())}`);
   };
   const onKeyDown = (event: KeyboardEvent) => {
@@ -88,14 +92,7 @@ function FindBox({ group, asked }: { group: string; asked: string }) {
         onKeyDown={onKeyDown}
         className="min-h-9 w-full rounded-sm border border-edge bg-raised px-3 placeholder:text-muted hover:border-ink"
       />
-      {shown && (
-        <Suggestions
-          id={listId}
-          suggestions={suggestions}
-          chosen={chosen}
-          onChoose={(number) => go(`/g/${group}/objects/${number}`)}
-        />
-      )}
+      {shown && <Suggestions id={listId} suggestions={suggestions} chosen={chosen} onChoose={openObject} />}
     </form>
   );
 }
@@ -143,11 +140,11 @@ function Suggestions({
             onChoose(one.number);
           }}
           className={classNames(
-            'flex cursor-pointer items-baseline justify-between gap-3 border-l-3 px-3 py-1.5 hover:bg-sunken',
+            'flex cursor-pointer flex-wrap items-baseline justify-between gap-x-3 border-l-3 px-3 py-1.5 hover:bg-sunken',
             index === chosen ? 'border-accent bg-sunken' : 'border-transparent',
           )}
         >
-          <span className="truncate">{one.text}</span>
+          <span className="min-w-0 truncate">{one.text}</span>
           <span className="shrink-0 text-xs text-muted">{one.remark}</span>
         </li>
       ))}

@@ -4,6 +4,8 @@ import { formatSepArcsec } from './quantities';
 /** The one scale of the recurring ruler: 0.01″ to 10′, logarithmic, the same wherever it appears. */
 export const RULER_MIN_ARCSEC = 0.01;
 export const RULER_MAX_ARCSEC = 600;
+/** Room beside the scale for marks and numbers at its ends. */
+export const RULER_SIDE_PX = 14;
 
 export const RULER_LABELS: readonly { sepArcsec: number; text: string }[] = [
   { sepArcsec: 0.01, text: '0.01″' },

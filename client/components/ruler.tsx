@@ -1,21 +1,16 @@
-import { useRef, type KeyboardEvent, type PointerEvent } from 'react';
-import { formatSepArcsec } from './quantities';
+import { RulerLimit } from './ruler-limit';
 import {
   RULER_LABELS,
   RULER_MAX_ARCSEC,
   RULER_MIN_ARCSEC,
+  RULER_SIDE_PX,
   RULER_TICKS,
-  roundedSep,
   rulerPx,
-  rulerSepArcsec,
   rulerText,
-  steppedSep,
   type RulerMark,
 } from './ruler-scale';
 import { stampOf } from './stamp-rule';
 import { useElementWidth } from './use-element-width';
-
-const SIDE_PX = 14;
 
 interface RulerProps {
   marks: readonly RulerMark[];
@@ -38,7 +33,7 @@ export function Ruler({
   label = 'Separation',
 }: RulerProps) {
   const [ref, fullPx] = useElementWidth(compact ? 160 : 480);
-  const widthPx = Math.max(60, fullPx - 2 * SIDE_PX);
+  const widthPx = Math.max(60, fullPx - 2 * RULER_SIDE_PX);
   const lineY = compact ? 15 : 22;
   const heightPx = compact ? 24 : 48;
   const text = `${label}: ${rulerText(marks, limitArcsec)}`;
@@ -47,7 +42,7 @@ export function Ruler({
       <svg
         width={fullPx}
         height={heightPx}
-        viewBox={`${-SIDE_PX} 0 ${fullPx} ${heightPx}`}
+        viewBox={`${-RULER_SIDE_PX} 0 ${fullPx} ${heightPx}`}
         role={onLimitChange === undefined ? 'img' : 'group'}
         aria-label={text}
         className="block max-w-full"
@@ -58,7 +53,7 @@ export function Ruler({
           <Mark key={index} mark={mark} widthPx={widthPx} y={lineY} />
         ))}
         {limitArcsec !== null && (
-          <Limit limitArcsec={limitArcsec} widthPx={widthPx} y={lineY} onChange={onLimitChange} />
+          <RulerLimit limitArcsec={limitArcsec} widthPx={widthPx} y={lineY} onChange={onLimitChange} />
         )}
       </svg>
     </div>
@@ -100,7 +95,13 @@ function RulerLine({ widthPx, y, numbers }: { widthPx: number; y: number; number
             textAnchor={
               sepArcsec === RULER_MIN_ARCSEC ? 'start' : sepArcsec === RULER_MAX_ARCSEC ? 'end' : 'middle'
             }
-            dx={sepArcsec === RULER_MIN_ARCSEC ? -SIDE_PX : sepArcsec === RULER_MAX_ARCSEC ? SIDE_PX : 0}
+            dx={
+              sepArcsec === RULER_MIN_ARCSEC
+                ? -RULER_SIDE_PX
+                : sepArcsec === RULER_MAX_ARCSEC
+                  ? RULER_SIDE_PX
+                  : 0
+            }
             fontSize={12}
             fill="var(--muted)"
           >
@@ -132,72 +133,4 @@ function Mark({ mark, widthPx, y }: { mark: RulerMark; widthPx: number; y: numbe
       )}
     </g>
   );
-}
-
-function Limit({
-  limitArcsec,
-  widthPx,
-  y,
-  onChange,
-}: {
-  limitArcsec: number;
-  widthPx: number;
-  y: number;
-  onChange?: (limitArcsec: number) => void;
-}) {
-  const handle = useRef<SVGGElement>(null);
-  const x = rulerPx(limitArcsec, widthPx);
-  const sign = (
-    <>
-      <line x1={x} x2={x} y1={2} y2={y + 8} stroke="var(--accent)" strokeWidth={1.5} />
-      <path d={`M${x - 4} 1h8l-4 6Z`} fill="var(--accent)" />
-    </>
-  );
-  if (onChange === undefined) return <g aria-hidden="true">{sign}</g>;
-
-  const follow = (event: PointerEvent) => {
-    const svg = handle.current?.ownerSVGElement;
-    if (!svg || (event.type === 'pointermove' && event.buttons === 0)) return;
-    onChange(roundedSep(rulerSepArcsec(event.clientX - svg.getBoundingClientRect().left - SIDE_PX, widthPx)));
-  };
-  const onKeyDown = (event: KeyboardEvent) => {
-    const next = limitAfterKey(event.key, event.shiftKey, limitArcsec);
-    if (next === null) return;
-    event.preventDefault();
-    event.stopPropagation();
-    onChange(next);
-  };
-  return (
-    <g
-      ref={handle}
-      role="slider"
-      tabIndex={0}
-      aria-label="Limit"
-      aria-valuemin={RULER_MIN_ARCSEC}
-      aria-valuemax={RULER_MAX_ARCSEC}
-      aria-valuenow={limitArcsec}
-      aria-valuetext={formatSepArcsec(limitArcsec)}
-      onKeyDown={onKeyDown}
-      onPointerDown={(event) => {
-        event.currentTarget.setPointerCapture(event.pointerId);
-        follow(event);
-      }}
-      onPointerMove={follow}
-      className="cursor-ew-resize touch-none"
-    >
-      <rect x={x - 12} y={0} width={24} height={y + 10} fill="transparent" />
-      {sign}
-    </g>
-  );
-}
-
-function limitAfterKey(key: string, fast: boolean, limitArcsec: number): number | null {
-  const steps = fast ? 10 : 1;
-  if (key === 'ArrowRight' || key === 'ArrowUp') return steppedSep(limitArcsec, steps);
-  if (key === 'ArrowLeft' || key === 'ArrowDown') return steppedSep(limitArcsec, -steps);
-  if (key === 'PageUp') return steppedSep(limitArcsec, 25);
-  if (key === 'PageDown') return steppedSep(limitArcsec, -25);
-  if (key === 'Home') return RULER_MIN_ARCSEC;
-  if (key === 'End') return RULER_MAX_ARCSEC;
-  return null;
 }

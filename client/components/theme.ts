@@ -14,10 +14,18 @@ export function followTheme(): () => void {
     document.documentElement.dataset.theme = choice !== 'system' ? choice : dark.matches ? 'night' : 'paper';
   };
   apply();
+  // Paper prints, whatever the theme on the screen.
+  const forPrint = () => {
+    document.documentElement.dataset.theme = 'paper';
+  };
   dark.addEventListener('change', apply);
+  window.addEventListener('beforeprint', forPrint);
+  window.addEventListener('afterprint', apply);
   const stop = themeChoice.subscribe(apply);
   return () => {
     dark.removeEventListener('change', apply);
+    window.removeEventListener('beforeprint', forPrint);
+    window.removeEventListener('afterprint', apply);
     stop();
   };
 }

@@ -4,10 +4,11 @@
  */
 import { bucketsByDeclination, RECORD_SIZE, type JoinBuckets } from './join-buckets';
 import { createJoinGrid, fillJoinGrid, type JoinGrid } from './join-grid';
+import { giveBackNumbers } from './join-memory';
 import { joinRadius, type JoinRadius } from './join-radius';
 import { scanRows } from './join-scan';
 import { concatPairs, createPairBuffer, takePairs, TooManyPairs, type PairColumns } from './pair-columns';
-import { checkPositions, checkRadius, type PositionColumns } from './positions';
+import { checkPositions, checkRadius, type PositionColumns, type PositionRange } from './positions';
 
 /** 1 degree: the largest radius of a join. The radius formulas of join-radius.ts rely on it. */
 export const MAX_JOIN_RADIUS_ARCSEC = 3600;
@@ -97,6 +98,21 @@ export function* coneJoinChunks(
 
   const radius = joinRadius(radiusArcsec);
   const buckets = bucketsByDeclination(a, aRange, b, radius);
+  try {
+    yield* joinBuckets(buckets, bRange, radius, totalRows, maxPairs);
+  } finally {
+    giveBackNumbers(buckets.aRecords);
+    giveBackNumbers(buckets.bRecords);
+  }
+}
+
+function* joinBuckets(
+  buckets: JoinBuckets,
+  bRange: PositionRange,
+  radius: JoinRadius,
+  totalRows: number,
+  maxPairs: number,
+): Generator<JoinChunk, void, undefined> {
   // The records hold 0 for an RA of 360.
   const grid = createJoinGrid(bRange.raMax === 360 ? 0 : bRange.raMin, bRange.raMax);
   const buffer = createPairBuffer(ROWS_PER_CHUNK * 2);

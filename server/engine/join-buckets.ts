@@ -3,6 +3,7 @@
  * cache. A row becomes a record (ra, dec, row number) in its bucket. Rows of B are copied into every bucket they are
  * within the radius of; rows of A never are: so each pair comes out of exactly one bucket.
  */
+import { takeNumbers } from './join-memory';
 import type { JoinRadius } from './join-radius';
 import type { PositionColumns, PositionRange } from './positions';
 
@@ -10,7 +11,7 @@ import type { PositionColumns, PositionRange } from './positions';
 export const RECORD_SIZE = 3;
 
 /** Rows of A and B together in a bucket: 32k records and their cells fit into a second-level cache. */
-const ROWS_PER_BUCKET = 16_384;
+const ROWS_PER_BUCKET = 12_288;
 /** Bin numbers are kept in 16 bits; the last value means "in no bin". */
 const NO_BIN = 0xffff;
 const MAX_BINS = 8_192;
@@ -39,7 +40,10 @@ interface BinnedRows {
   readonly rowsInBin: Uint32Array;
 }
 
-/** Sorts both catalogues into buckets. Rows of B that no row of A can be near are left out. */
+/**
+ * Sorts both catalogues into buckets. Rows of B that no row of A can be near are left out.
+ * The records are borrowed from join-memory: give them back when done.
+ */
 export function bucketsByDeclination(
   a: PositionColumns,
   aRange: PositionRange,
@@ -139,7 +143,7 @@ function placeRows(
   }
 
   const cursor = start.slice();
-  const records = new Float64Array((start[bucketCount] as number) * RECORD_SIZE);
+  const records = takeNumbers((start[bucketCount] as number) * RECORD_SIZE);
   for (let row = 0; row < decDeg.length; row += 1) {
     const bin = binOfRow[row] as number;
     if (bin === NO_BIN) continue;

@@ -10,7 +10,7 @@ import { paddedHalfWidthDeg, type JoinRadius } from './join-radius';
 const SECTORS = 512;
 /** So many rows of a bucket are enough to see how they spread over the sectors. */
 const SAMPLE_ROWS = 4096;
-const CELLS_PER_ROW = 3;
+const CELLS_PER_ROW = 1.5;
 const MAX_ZONES = 8192;
 /** A zone is at least this many radii high, so that few rows of B touch two zones. */
 const MIN_ZONE_IN_RADII = 8;
@@ -31,10 +31,6 @@ export interface JoinGrid {
   readonly cellsOfSector: Int32Array;
   readonly rowsInSector: Int32Array;
   readonly zoneHalfWidth: Float64Array;
-  /** Declination (degrees) in the middle of each zone, its cosine and sine: for `cosineNear`. */
-  readonly zoneMiddle: Float64Array;
-  readonly zoneCos: Float64Array;
-  readonly zoneSin: Float64Array;
   /** Records of cell i are `cellStart[i]` to `cellStart[i + 1]` in `records`. */
   cellStart: Int32Array;
   records: Float64Array;
@@ -56,9 +52,6 @@ export function createJoinGrid(raMin: number, raMax: number): JoinGrid {
     cellsOfSector: new Int32Array(SECTORS),
     rowsInSector: new Int32Array(SECTORS),
     zoneHalfWidth: new Float64Array(MAX_ZONES),
-    zoneMiddle: new Float64Array(MAX_ZONES),
-    zoneCos: new Float64Array(MAX_ZONES),
-    zoneSin: new Float64Array(MAX_ZONES),
     cellStart: new Int32Array(0),
     records: new Float64Array(0),
     slotOfRow: new Int32Array(0),
@@ -145,11 +138,7 @@ function shapeZones(
     const middle = aDecMin + (zone + 0.5) * (heightDeg / grid.zones);
     // A little further than the edge itself, which is subject to rounding.
     const farEdge = Math.abs(middle) + (heightDeg / grid.zones) * 0.5 + radius.paddedDeg * 1e-3;
-    const plain = farEdge <= POLAR_DEC_DEG && heightDeg / grid.zones + 2 * radius.paddedDeg <= SERIES_ZONE_DEG;
-    grid.zoneHalfWidth[zone] = plain ? paddedHalfWidthDeg(radius, farEdge) : NaN;
-    grid.zoneMiddle[zone] = middle;
-    grid.zoneCos[zone] = cosDeg(middle);
-    grid.zoneSin[zone] = sinDeg(middle);
+    grid.zoneHalfWidth[zone] = farEdge > POLAR_DEC_DEG ? NaN : paddedHalfWidthDeg(radius, farEdge);
   }
 }
 

@@ -31,7 +31,8 @@ export function checkPositions(name: string, { raDeg, decDeg }: PositionColumns)
     const dec = decDeg[row] as number;
     // Written so that NaN fails.
     if (!(ra >= 0 && ra <= 360)) throw new RangeError(`${name}.raDeg[${row}] must be 0..360, not ${ra}`);
-    if (!(dec >= -90 && dec <= 90)) throw new RangeError(`${name}.decDeg[${row}] must be -90..90, not ${dec}`);
+    if (!(dec >= -90 && dec <= 90))
+      throw new RangeError(`${name}.decDeg[${row}] must be -90..90, not ${dec}`);
     if (ra < raMin) raMin = ra;
     if (ra > raMax) raMax = ra;
     if (dec < decMin) decMin = dec;

@@ -7,6 +7,7 @@ import type { Alias } from '../../shared/schemas/object';
 import type { Context, GroupActor } from '../context';
 import { found, refuse } from '../errors';
 import { recordEvent } from './audit';
+import { liveIdOf } from './live-object';
 import { liveObject } from './object-page';
 import { bigintArray } from './verdict-log';
 
@@ -86,7 +87,7 @@ export async function retireAlias(context: Context, actor: GroupActor, aliasId: 
     if (name.retiredAt !== null) refuse('already-taken-back', 'The name is retired already.');
     await tx.update(alias).set({ retiredAt: sql`now()` }).where(eq(alias.id, aliasId));
     const { rows } = await tx.execute<{ number: number }>(
-      sql`select l.number from object o join object l on l.id = coalesce(o.merged_into, o.id) where o.id = ${name.objectId}`,
+      sql`select l.number from object o join object l on l.id = ${liveIdOf('o')} where o.id = ${name.objectId}`,
     );
     await recordEvent(tx, actor, 'name retired', `object ${rows[0]?.number ?? 0}`, { name: name.name });
   });

@@ -5,6 +5,7 @@ import type { Candidate, candidateQuery, verdictCounts as counts } from '../../s
 import type { Context, GroupActor } from '../context';
 import { found, refuse } from '../errors';
 import { decodeCursor, encodeCursor } from './cursor';
+import { liveIdOf } from './live-object';
 import { runByNumber, runRevisions, type RunRow } from './run-lookup';
 import { bigintArray, verdictJson } from './verdict-log';
 
@@ -19,9 +20,11 @@ export interface CandidatePage {
 const MAX_COUNTED = 100_000;
 const seqCursor = z.number().int();
 
+const onPair = sql`f.group_id = c.group_id and f.entry_a = least(c.entry_a, c.entry_b)
+  and f.entry_b = greatest(c.entry_a, c.entry_b)`;
+
 /** Candidate `c` with the verdict in force on its pair, `f`. */
-export const candidatesWithVerdict = sql`candidate c left join verdict_in_force f
-  on f.group_id = c.group_id and f.entry_a = least(c.entry_a, c.entry_b) and f.entry_b = greatest(c.entry_a, c.entry_b)`;
+export const candidatesWithVerdict = sql`candidate c left join verdict_in_force f on ${onPair}`;
 
 /** Mutual best on both sides and nobody else inside the radius (on `c`). */
 export const isClear = sql`(c.mutual_best and c.rivals_a = 0 and c.rivals_b = 0)`;
@@ -30,16 +33,36 @@ export function ofRun(actor: GroupActor, run: Pick<RunRow, 'id'>): SQL {
   return sql`c.run_id = ${run.id} and c.group_id = ${actor.groupId}`;
 }
 
-/** The conditions of a filter on `c` and `f`, beside the run itself. */
-export async function filterConditions(
+/** Candidates under a filter, as parts of a query: where they come from, their verdict, and the conditions. */
+interface Queue {
+  from: SQL;
+  verdictId: SQL;
+  where: SQL[];
+}
+
+/** Candidates under a filter. Each kind of verdict has its own join, so that a page can stop at its last row. */
+async function queueOf(tx: Tx, actor: GroupActor, run: RunRow, filter: CandidateFilter): Promise<Queue> {
+  const where = [ofRun(actor, run), ...(await conditionsOf(tx, actor, run, filter))];
+  if (filter.verdict === 'any') return { from: candidatesWithVerdict, verdictId: sql`f.verdict_id`, where };
+  if (filter.verdict === 'undecided') {
+    const undecided = sql`not exists (select 1 from verdict_in_force f where ${onPair})`;
+    return { from: sql`candidate c`, verdictId: sql`null::bigint`, where: [...where, undecided] };
+  }
+  return {
+    from: sql`candidate c join verdict_in_force f on ${onPair}`,
+    verdictId: sql`f.verdict_id`,
+    where: [...where, sql`f.value = ${filter.verdict}`],
+  };
+}
+
+/** The conditions of a filter on `c`: all but the verdict. */
+export async function conditionsOf(
   tx: Tx,
   actor: GroupActor,
   run: RunRow,
   filter: CandidateFilter,
 ): Promise<SQL[]> {
   const conditions: SQL[] = [];
-  if (filter.verdict === 'undecided') conditions.push(sql`f.verdict_id is null`);
-  else if (filter.verdict !== 'any') conditions.push(sql`f.value = ${filter.verdict}`);
   if (filter.kind === 'clear') conditions.push(isClear);
   if (filter.kind === 'crowded') conditions.push(sql`not ${isClear}`);
   if (filter.minSepArcsec !== undefined) conditions.push(sql`c.sep_arcsec >= ${filter.minSepArcsec}::float8`);
@@ -71,20 +94,20 @@ export async function listCandidates(
 ): Promise<CandidatePage> {
   return inTransaction(context.database, actor, async (tx) => {
     const run = await runByNumber(tx, actor, number);
-    const conditions = await filterConditions(tx, actor, run, query);
-    const all = [ofRun(actor, run), ...conditions];
+    const queue = await queueOf(tx, actor, run, query);
     const from = query.after === undefined ? [] : [beyond(query.sort, decodeCursor(seqCursor, query.after))];
-    const found = await selectCandidates(tx, run, {
-      where: [...all, ...from],
-      descending: query.sort === 'sep-desc',
-      limit: query.limit + 1,
-    });
+    const found = await selectCandidates(
+      tx,
+      run,
+      { ...queue, where: [...queue.where, ...from] },
+      { descending: query.sort === 'sep-desc', limit: query.limit + 1 },
+    );
     const items = found.slice(0, query.limit);
     const last = items.at(-1);
     return {
       items,
       next: found.length > query.limit && last !== undefined ? encodeCursor(last.seq) : null,
-      total: await countPageable(tx, run, conditions, all),
+      total: await countPageable(tx, run, queue, query),
     };
   });
 }
@@ -93,14 +116,17 @@ function beyond(sort: CandidateFilter['sort'], seq: number): SQL {
   return sort === 'sep' ? sql`c.seq > ${seq}` : sql`c.seq < ${seq}`;
 }
 
-async function countPageable(tx: Tx, run: RunRow, conditions: SQL[], all: SQL[]): Promise<number | null> {
-  if (conditions.length === 0) return run.candidates;
-  return run.candidates > MAX_COUNTED ? null : countCandidates(tx, all);
-}
-
-export async function countCandidates(tx: Tx, where: SQL[]): Promise<number> {
+async function countPageable(
+  tx: Tx,
+  run: RunRow,
+  queue: Queue,
+  filter: CandidateFilter,
+): Promise<number | null> {
+  // The run itself is the one condition of a list without filters.
+  if (filter.verdict === 'any' && queue.where.length === 1) return run.candidates;
+  if (run.candidates > MAX_COUNTED) return null;
   const { rows } = await tx.execute<{ n: number }>(
-    sql`select count(*) as n from ${candidatesWithVerdict} where ${sql.join(where, sql` and `)}`,
+    sql`select count(*) as n from ${queue.from} where ${sql.join(queue.where, sql` and `)}`,
   );
   return found(rows[0], 'count').n;
 }
@@ -123,20 +149,21 @@ function sideJoins(side: 'a' | 'b', revisionIds: readonly number[]): SQL {
     join catalogue_revision ${r} on ${r}.id = ${revision}
     join catalogue ${k} on ${k}.id = ${r}.catalogue_id
     left join object ${b} on ${b}.id = ${s}.entry_id
-    left join object ${o} on ${o}.id = coalesce(${b}.merged_into, ${b}.id)`;
+    left join object ${o} on ${o}.id = ${liveIdOf(`b${side}`)}`;
 }
 
-/** Candidates that meet the conditions (on `c` and `f`) in the order of separation, with all that is shown of them. */
-export async function selectCandidates(
+/** Candidates of a queue in the order of separation, with all that is shown of them. */
+async function selectCandidates(
   tx: Tx,
   run: RunRow,
-  wanted: { where: SQL[]; descending: boolean; limit: number },
+  queue: Queue,
+  { descending, limit }: { descending: boolean; limit: number },
 ): Promise<Candidate[]> {
-  const order = wanted.descending ? sql`c.seq desc` : sql`c.seq`;
+  const order = descending ? sql`c.seq desc` : sql`c.seq`;
   const { rows } = await tx.execute<Candidate & { [key: string]: unknown }>(sql`
     with page as materialized (
-      select c.*, f.verdict_id from ${candidatesWithVerdict}
-      where ${sql.join(wanted.where, sql` and `)} order by ${order} limit ${wanted.limit})
+      select c.*, ${queue.verdictId} as verdict_id from ${queue.from}
+      where ${sql.join(queue.where, sql` and `)} order by ${order} limit ${limit})
     select c.seq, ${sideJson('a')} as a, ${sideJson('b')} as b, c.sep_arcsec as "sepArcsec", c.pa_deg as "paDeg",
       c.rank_a as "rankA", c.rank_b as "rankB", c.rivals_a as "rivalsA", c.rivals_b as "rivalsB",
       c.mutual_best as "mutualBest", ${verdictJson} as verdict
@@ -147,6 +174,19 @@ export async function selectCandidates(
     left join person p on p.id = v.person_id
     order by ${order}`);
   return rows;
+}
+
+/** The candidates of a run that meet a condition on `c`, by separation. */
+export function candidatesWhere(
+  tx: Tx,
+  actor: GroupActor,
+  run: RunRow,
+  condition: SQL,
+  limit: number,
+): Promise<Candidate[]> {
+  const where = [ofRun(actor, run), condition];
+  const queue = { from: candidatesWithVerdict, verdictId: sql`f.verdict_id`, where };
+  return selectCandidates(tx, run, queue, { descending: false, limit });
 }
 
 /** How the candidates of a run stand: by verdict in force, undecided, and how many of the verdicts are automatic. */

@@ -5,11 +5,10 @@ import { midpoint } from '../../shared/astro/sphere';
 import type { Context, GroupActor } from '../context';
 import { found } from '../errors';
 import {
+  candidatesWhere,
   candidatesWithVerdict,
-  countCandidates,
-  filterConditions,
+  conditionsOf,
   ofRun,
-  selectCandidates,
   type CandidateFilter,
 } from './candidates';
 import { coneSources } from './near-sources';
@@ -34,22 +33,13 @@ export async function deskTask(
 ): Promise<DeskTask> {
   return inTransaction(context.database, actor, async (tx) => {
     const run = await runByNumber(tx, actor, number);
-    const whole = ofRun(actor, run);
-    const [row] = await selectCandidates(tx, run, {
-      where: [whole, sql`c.seq = ${seq}`],
-      descending: false,
-      limit: 1,
-    });
+    const [row] = await candidatesWhere(tx, actor, run, sql`c.seq = ${seq}`, 1);
     const candidate = found(row, `candidate ${seq}`);
     const revisions = await runRevisions(tx, actor, run);
     const pair = [candidate.a.entryId, candidate.b.entryId] as const;
     return {
       candidate,
-      others: await selectCandidates(tx, run, {
-        where: [whole, touches(pair), sql`c.seq <> ${seq}`],
-        descending: false,
-        limit: MAX_OTHERS,
-      }),
+      others: await candidatesWhere(tx, actor, run, sql`${touches(pair)} and c.seq <> ${seq}`, MAX_OTHERS),
       ...(await fieldAround(context, tx, actor, run, candidate)),
       rowA: await originalRow(tx, actor, revisionOf(revisions, candidate.a), candidate.a.rowNo),
       rowB: await originalRow(tx, actor, revisionOf(revisions, candidate.b), candidate.b.rowNo),
@@ -109,6 +99,7 @@ async function originalRow(
   return revision.columns.map(({ name }, i) => ({ name, cell: cells[i] ?? '' }));
 }
 
+/** One pass over the queue: the nearest on either side of a candidate, and how many wait for a verdict. */
 async function neighboursInQueue(
   tx: Tx,
   actor: GroupActor,
@@ -116,20 +107,20 @@ async function neighboursInQueue(
   seq: number,
   filter: CandidateFilter,
 ): Promise<Pick<DeskTask, 'previousSeq' | 'nextSeq' | 'undecidedLeft'>> {
-  const where = [ofRun(actor, run), ...(await filterConditions(tx, actor, run, filter))];
-  const undecided = [
-    ofRun(actor, run),
-    ...(await filterConditions(tx, actor, run, { ...filter, verdict: 'undecided' })),
-  ];
-  const lower = await seqBeside(tx, [...where, sql`c.seq < ${seq}`], sql`c.seq desc`);
-  const higher = await seqBeside(tx, [...where, sql`c.seq > ${seq}`], sql`c.seq`);
+  const where = [ofRun(actor, run), ...(await conditionsOf(tx, actor, run, filter))];
+  const undecided = sql`f.verdict_id is null`;
+  const inQueue =
+    filter.verdict === 'any'
+      ? sql`true`
+      : filter.verdict === 'undecided'
+        ? undecided
+        : sql`f.value = ${filter.verdict}`;
+  const { rows } = await tx.execute<{ lower: number | null; higher: number | null; left: number }>(sql`
+    select max(c.seq) filter (where ${inQueue} and c.seq < ${seq}) as lower,
+      min(c.seq) filter (where ${inQueue} and c.seq > ${seq}) as higher,
+      count(*) filter (where ${undecided}) as left
+    from ${candidatesWithVerdict} where ${sql.join(where, sql` and `)}`);
+  const { lower, higher, left } = found(rows[0], 'count');
   const [previousSeq, nextSeq] = filter.sort === 'sep' ? [lower, higher] : [higher, lower];
-  return { previousSeq, nextSeq, undecidedLeft: await countCandidates(tx, undecided) };
-}
-
-async function seqBeside(tx: Tx, where: SQL[], order: SQL): Promise<number | null> {
-  const { rows } = await tx.execute<{ seq: number }>(sql`
-    select c.seq from ${candidatesWithVerdict}
-    where ${sql.join(where, sql` and `)} order by ${order} limit 1`);
-  return rows[0]?.seq ?? null;
+  return { previousSeq, nextSeq, undecidedLeft: left };
 }

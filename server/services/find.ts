@@ -6,6 +6,7 @@ import { parsePosition } from '../../shared/astro/angles';
 import { nameKey } from '../../shared/astro/designations';
 import type { FindAnswer, findQuery } from '../../shared/schemas/find';
 import type { Context, GroupActor } from '../context';
+import { liveIdOf } from './live-object';
 import { differenceInWords } from './near-names';
 import { OBJECT_COLUMNS, objectsInCone, summaries, type ObjectRow } from './objects';
 
@@ -43,7 +44,7 @@ const nothing = (q: string, read: FindAnswer['read']): FindAnswer => ({
 
 async function findNumber(tx: Tx, actor: GroupActor, query: FindQuery, number: number): Promise<FindAnswer> {
   const { rows } = await tx.execute<ObjectRow>(sql`
-    select ${OBJECT_COLUMNS} from object b join object o on o.id = coalesce(b.merged_into, b.id)
+    select ${OBJECT_COLUMNS} from object b join object o on o.id = ${liveIdOf('b')}
     where b.group_id = ${actor.groupId} and b.number = ${number}`);
   const [summary] = await summaries(tx, rows.map((row) => ({ ...row, sepArcsec: null })));
   const answer = nothing(query.q, 'number');
@@ -77,7 +78,7 @@ async function findName(tx: Tx, actor: GroupActor, query: FindQuery): Promise<Fi
   if (key === '') return answer;
   const { rows } = await tx.execute<ObjectRow & { alias: string }>(sql`
     select distinct on (o.number) ${OBJECT_COLUMNS}, a.name as alias
-    from alias a join object b on b.id = a.object_id join object o on o.id = coalesce(b.merged_into, b.id)
+    from alias a join object b on b.id = a.object_id join object o on o.id = ${liveIdOf('b')}
     where a.group_id = ${actor.groupId} and a.key = ${key} and a.retired_at is null
     order by o.number limit ${query.limit}`);
   const described = await summaries(tx, rows.map((row) => ({ ...row, sepArcsec: null })));
@@ -107,7 +108,7 @@ async function nearNames(tx: Tx, actor: GroupActor, query: FindQuery, key: strin
         where a.group_id = ${actor.groupId} and a.retired_at is null and a.key % ${key}
         order by similarity(a.key, ${key}) desc, a.id limit ${NEAR_CANDIDATES})
     ) as near
-    join object b on b.id = near.object_id join object l on l.id = coalesce(b.merged_into, b.id)`);
+    join object b on b.id = near.object_id join object l on l.id = ${liveIdOf('b')}`);
   const fuse = new Fuse(rows, { keys: ['key'], threshold: 0.6, ignoreLocation: true, includeScore: true });
   const ranked = fuse.search(key).map((hit) => hit.item);
   const others = rows.filter((row) => !ranked.includes(row)).sort((a, b) => (a.key < b.key ? -1 : 1));

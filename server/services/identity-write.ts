@@ -19,6 +19,7 @@ export interface Written {
 }
 
 const MAX_MOVES = 500;
+const MANY_ENTRIES = 2000;
 
 /**
  * Writes the given components to the registry, set-based: the live object of a component is the one with the
@@ -39,20 +40,19 @@ export async function writeComponents(
   if (ids.length === 0) return { changed: 0, moves: [] };
   const componentOf = components.flatMap((members, i) => members.map(() => i));
   const { ready, current } = await selectRevisions(tx, actor);
+  await fillParts(tx, ids, componentOf);
   const { rows } = await tx.execute<{ changed: number; moves: Move[] | null }>(sql`
-    with part as materialized (
-      select id, component from unnest(${bigintArray(ids)}, ${bigintArray(componentOf)}) as p (id, component)),
-    born as materialized (
+    with born as materialized (
       select p.component, o.id, o.number, o.merged_into, o.name, o.ra_deg, o.dec_deg, o.err_arcsec,
         first_value(o.id) over by_number as root_id, first_value(o.number) over by_number as root_number,
         count(*) over (partition by p.component) as members
-      from part p join object o on o.id = p.id and o.group_id = ${actor.groupId}
+      from identity_part p join object o on o.id = p.id and o.group_id = ${actor.groupId}
       window by_number as (partition by p.component order by o.number)),
     latest as materialized (
       select distinct on (s.entry_id) p.component, s.entry_id, s.designation, s.ra_deg, s.dec_deg,
         sqrt(nullif(s.err_maj_arcsec::float8 * coalesce(s.err_min_arcsec, s.err_maj_arcsec)::float8, 0)) as sigma,
         s.revision_id = any(${bigintArray(current)}) as is_current
-      from part p join source s on s.entry_id = p.id and s.group_id = ${actor.groupId}
+      from identity_part p join source s on s.entry_id = p.id and s.group_id = ${actor.groupId}
         and s.revision_id = any(${bigintArray(ready)}::int[])
       order by s.entry_id, s.revision_id desc),
     ranked as (
@@ -104,7 +104,24 @@ export async function writeComponents(
       select json_build_object('number', number, 'wasPartOf', was_number, 'isPartOf', is_number) as move
       from written where was_number <> is_number order by number limit ${MAX_MOVES})
     select (select count(*) from written) as changed, (select json_agg(move) from moved) as moves`);
+  await tx.execute(sql`set local enable_nestloop = on`);
   return { changed: rows[0]?.changed ?? 0, moves: rows[0]?.moves ?? [] };
+}
+
+/**
+ * Lays the components out as a temporary table with statistics. The joins above are between intermediate results whose
+ * size the planner cannot know; for many entries nested loops, good for a few, would take the square of the time.
+ */
+async function fillParts(tx: Tx, ids: readonly number[], componentOf: readonly number[]): Promise<void> {
+  await tx.execute(
+    sql`create temp table if not exists identity_part (id bigint primary key, component bigint not null) on commit drop`,
+  );
+  await tx.execute(sql`truncate identity_part`);
+  await tx.execute(
+    sql`insert into identity_part select * from unnest(${bigintArray(ids)}, ${bigintArray(componentOf)})`,
+  );
+  await tx.execute(sql`analyze identity_part`);
+  if (ids.length > MANY_ENTRIES) await tx.execute(sql`set local enable_nestloop = off`);
 }
 
 /** Ids of the group's ready revisions, and of those that are the newest of their catalogue. */

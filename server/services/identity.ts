@@ -4,6 +4,7 @@ import type { GroupActor } from '../context';
 import { partitionEntries } from '../engine/partition';
 import { selectConnected, selectEdges, selectMoved, type IdentityEdges } from './identity-edges';
 import { writeComponents, type Written } from './identity-write';
+import { liveIdOf } from './live-object';
 import { lockRegistry } from './registry-lock';
 import { bigintArray } from './verdict-log';
 
@@ -55,7 +56,7 @@ export async function liveNumbers(
   entries: readonly number[],
 ): Promise<(number | null)[]> {
   const { rows } = await tx.execute<{ id: number; number: number }>(sql`
-    select o.id, live.number from object o join object live on live.id = coalesce(o.merged_into, o.id)
+    select o.id, live.number from object o join object live on live.id = ${liveIdOf('o')}
     where o.group_id = ${actor.groupId} and o.id = any(${bigintArray(entries)})`);
   const numberOf = new Map(rows.map((row) => [row.id, row.number]));
   return entries.map((entry) => numberOf.get(entry) ?? null);

@@ -24,11 +24,14 @@ export interface MergedParts {
   members: readonly MergedMember[];
   /** Null label: a name that a person gave. */
   names: readonly { live: number; label: string | null; name: string }[];
-  verdicts: readonly { live: number; verdicts: number; weakest: number | null }[];
+  /** One for each 'same' verdict that holds the object together. */
+  grades: readonly { live: number; grade: string | null }[];
 }
 
 type Cell = string | number | null;
-const GRADES = ['certain', 'probable', 'possible', 'without grade'];
+/** From the surest to the least sure. */
+const GRADES = ['certain', 'probable', 'possible'];
+const NO_GRADE = 'without grade';
 /** A tenth of a microarcsecond: no catalogue is better. */
 const DEGREE_DIGITS = 9;
 const SEPARATION_DIGITS = 4;
@@ -75,9 +78,9 @@ export class MergedRowWriter {
   rows(objects: readonly MergedObject[], parts: MergedParts): Cell[][] {
     const members = grouped(parts.members);
     const names = grouped(parts.names);
-    const verdicts = grouped(parts.verdicts);
+    const grades = grouped(parts.grades);
     return objects.map((object) =>
-      this.row(object, members.get(object.id) ?? [], names.get(object.id) ?? [], verdicts.get(object.id)?.[0]),
+      this.row(object, members.get(object.id) ?? [], names.get(object.id) ?? [], grades.get(object.id) ?? []),
     );
   }
 
@@ -85,11 +88,10 @@ export class MergedRowWriter {
     object: MergedObject,
     members: readonly MergedMember[],
     names: readonly { label: string | null; name: string }[],
-    verdicts: { verdicts: number; weakest: number | null } | undefined,
+    verdicts: readonly { grade: string | null }[],
   ): Cell[] {
     const { recipe, catalogues } = this;
     const degrees = [object.raDeg, object.decDeg].map((value) => Number(value.toFixed(DEGREE_DIGITS)));
-    const grade = verdicts === undefined ? null : (GRADES[(verdicts.weakest ?? GRADES.length) - 1] ?? null);
     return [
       object.number,
       object.name,
@@ -98,7 +100,7 @@ export class MergedRowWriter {
       object.errArcsec === null ? null : Number(object.errArcsec.toFixed(SEPARATION_DIGITS)),
       object.entries,
       ...this.nameCells(names),
-      ...(recipe.grades ? [grade, verdicts?.verdicts ?? 0] : []),
+      ...(recipe.grades ? [lowestGrade(verdicts), verdicts.length] : []),
       ...catalogues.flatMap((catalogue) => this.catalogueCells(object, catalogue, members)),
     ];
   }
@@ -128,6 +130,12 @@ export class MergedRowWriter {
       ...catalogue.columns.map(({ index }) => shared(written.map((cells) => (cells[index] ?? '').trim()))),
     ];
   }
+}
+
+function lowestGrade(verdicts: readonly { grade: string | null }[]): string | null {
+  if (verdicts.length === 0) return null;
+  if (verdicts.some((one) => one.grade === null)) return NO_GRADE;
+  return GRADES[Math.max(...verdicts.map((one) => GRADES.indexOf(one.grade ?? '')))] ?? NO_GRADE;
 }
 
 /** One value as it is, several joined, none as an empty cell. */

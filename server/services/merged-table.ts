@@ -3,8 +3,9 @@ import { inTransaction, type Tx } from '../../db/client';
 import type { ExportOptions, ExportPreview, ExportRecipe } from '../../shared/schemas/export';
 import type { Context, GroupActor } from '../context';
 import { csvLine } from '../formats/csv-writer';
-import { MergedRowWriter, type MergedMember, type MergedObject } from './merged-row';
+import { MergedRowWriter, type MergedMember, type MergedObject, type MergedParts } from './merged-row';
 import { currentRevisionIds } from './near-sources';
+import { bornInto } from './objects';
 import { bigintArray } from './verdict-log';
 
 const PAGE_OBJECTS = 2000;
@@ -164,27 +165,42 @@ async function pageOfRows(
     select o.id, o.number, o.name, o.ra_deg as "raDeg", o.dec_deg as "decDeg", o.err_arcsec as "errArcsec", o.entries
     from object o where ${filter} and o.number > ${after} order by o.number limit ${limit}`);
   if (objects.length === 0) return { cells: [], last: after };
-  const ids = bigintArray(objects.map((one) => one.id));
+  const parts = await partsOf(tx, actor, objects.map((one) => one.id));
+  return { cells: writer.rows(objects, parts), last: objects.at(-1)?.number ?? after };
+}
+
+/**
+ * Members, names and verdicts of live objects. Each is looked up by its own index from a plain list of ids and put
+ * together here: joins over a list whose length the planner cannot know end in plans that take the square of the time.
+ */
+async function partsOf(tx: Tx, actor: GroupActor, liveIds: readonly number[]): Promise<MergedParts> {
+  const born = await bornInto(tx, liveIds);
+  const ids = bigintArray(born.keys());
+  const liveOf = (entryId: number) => born.get(entryId) ?? 0;
   const revisionIds = await currentRevisionIds(tx, actor);
-  const born = sql`(select id as live, id from object where id = any(${ids})
-    union all select merged_into, id from object where merged_into = any(${ids}))`;
-  const { rows: members } = await tx.execute<MergedMember & Record<string, unknown>>(sql`
-    select m.live, c.label, s.ra_deg as "raDeg", s.dec_deg as "decDeg", s.cells
-    from ${born} as m
-    join source s on s.entry_id = m.id and s.revision_id = any(${sql.param(revisionIds)}::int[])
+  const members = await tx.execute<Omit<MergedMember, 'live'> & { entryId: number }>(sql`
+    select s.entry_id as "entryId", c.label, s.ra_deg as "raDeg", s.dec_deg as "decDeg", s.cells
+    from source s
     join catalogue_revision r on r.id = s.revision_id
     join catalogue c on c.id = r.catalogue_id
-    order by m.live, c.ordinal, s.row_no`);
-  const { rows: names } = await tx.execute<{ live: number; label: string | null; name: string }>(sql`
-    select m.live, case when a.origin = 'entry' then c.label end as label, a.name
-    from ${born} as m join alias a on a.object_id = m.id and a.retired_at is null
-    join entry e on e.id = m.id join catalogue c on c.id = e.catalogue_id
-    order by m.live, c.ordinal, a.id`);
-  const { rows: verdicts } = await tx.execute<{ live: number; verdicts: number; weakest: number | null }>(sql`
-    select m.live, count(*) as verdicts,
-      max(case f.grade when 'certain' then 1 when 'probable' then 2 when 'possible' then 3 else 4 end) as weakest
-    from ${born} as m join verdict_in_force f on f.entry_a = m.id and f.value = 'same'
-    join object b on b.id = f.entry_b and coalesce(b.merged_into, b.id) = m.live
-    group by m.live`);
-  return { cells: writer.rows(objects, { members, names, verdicts }), last: objects.at(-1)?.number ?? after };
+    where s.entry_id = any(${ids}) and s.revision_id = any(${sql.param(revisionIds)}::int[])
+    order by c.ordinal, s.row_no`);
+  const labelOf = new Map(members.rows.map((member) => [member.entryId, member.label]));
+  const names = await tx.execute<{ entryId: number; byPerson: boolean; name: string }>(sql`
+    select object_id as "entryId", origin = 'person' as "byPerson", name from alias
+    where object_id = any(${ids}) and retired_at is null order by object_id, id`);
+  const verdicts = await tx.execute<{ a: number; b: number; grade: string | null }>(sql`
+    select entry_a as a, entry_b as b, grade from verdict_in_force where entry_a = any(${ids}) and value = 'same'`);
+  return {
+    members: members.rows.map(({ entryId, ...member }) => ({ ...member, live: liveOf(entryId) })),
+    names: names.rows.map(({ entryId, byPerson, name }) => ({
+      live: liveOf(entryId),
+      label: byPerson ? null : (labelOf.get(entryId) ?? null),
+      name,
+    })),
+    // A verdict that leads out of the object was not carried out and does not hold it together.
+    grades: verdicts.rows
+      .filter((one) => liveOf(one.a) === liveOf(one.b))
+      .map((one) => ({ live: liveOf(one.a), grade: one.grade })),
+  };
 }

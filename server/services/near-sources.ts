@@ -1,6 +1,7 @@
 import { sql } from 'drizzle-orm';
 import type { Tx } from '../../db/client';
 import type { Context, GroupActor } from '../context';
+import { liveIdOf } from './live-object';
 import { nearestRows, rowsInCone, type NearRow } from './revision-index';
 
 /** A source near a place, with what charts and lists show of it. */
@@ -74,7 +75,7 @@ async function describeRows(tx: Tx, actor: GroupActor, near: readonly NearRow[])
     join catalogue_revision r on r.id = s.revision_id
     join catalogue c on c.id = r.catalogue_id
     left join object o on o.id = s.entry_id
-    left join object live on live.id = coalesce(o.merged_into, o.id)
+    left join object live on live.id = ${liveIdOf('o')}
     where s.group_id = ${actor.groupId}`);
   const sepOf = new Map(near.map((row) => [`${row.revisionId}/${row.rowNo}`, row.sepArcsec]));
   return rows

@@ -8,6 +8,7 @@ import type { Context, GroupActor } from '../context';
 import { found, refuse } from '../errors';
 import { aliasesOf } from './aliases';
 import { recordEvent } from './audit';
+import { liveIdOf } from './live-object';
 import { coneSources, currentRevisionIds, nearestSources } from './near-sources';
 import { notesOf } from './notes';
 import { historyOf } from './object-history';
@@ -32,7 +33,7 @@ interface LiveObject {
 export async function liveObject(tx: Tx, actor: GroupActor, number: number): Promise<LiveObject> {
   const { rows } = await tx.execute<LiveObject>(sql`
     select l.id, l.number, l.version, l.name, l.ra_deg as "raDeg", l.dec_deg as "decDeg", l.err_arcsec as "errArcsec"
-    from object o join object l on l.id = coalesce(o.merged_into, o.id)
+    from object o join object l on l.id = ${liveIdOf('o')}
     where o.group_id = ${actor.groupId} and o.number = ${number}`);
   return found(rows[0], `object ${number}`);
 }

@@ -192,17 +192,28 @@ export async function summaries(
   }));
 }
 
+/** The entries of live objects: entry id -> id of its live object. */
+export async function bornInto(tx: Tx, liveIds: readonly number[]): Promise<Map<number, number>> {
+  const list = bigintArray(liveIds);
+  const { rows } = await tx.execute<{ id: number; live: number }>(sql`
+    select id, id as live from object where id = any(${list})
+    union all select id, merged_into from object where merged_into = any(${list})`);
+  return new Map(rows.map((row) => [row.id, row.live]));
+}
+
 /** Labels of the catalogues that live objects stand in, in order of arrival. */
 async function labelsOf(tx: Tx, ids: readonly number[]): Promise<Map<number, string[]>> {
   if (ids.length === 0) return new Map();
+  const born = await bornInto(tx, ids);
   const { rows } = await tx.execute<{ id: number; label: string }>(sql`
-    select distinct m.live as id, c.label, c.ordinal
-    from (select id as live, id from object where id = any(${bigintArray(ids)})
-      union all select merged_into, id from object where merged_into = any(${bigintArray(ids)})) as m
-    join entry e on e.id = m.id
-    join catalogue c on c.id = e.catalogue_id
-    order by m.live, c.ordinal`);
+    select e.id, c.label from entry e join catalogue c on c.id = e.catalogue_id
+    where e.id = any(${bigintArray(born.keys())}) order by c.ordinal`);
   const labels = new Map<number, string[]>();
-  for (const row of rows) labels.set(row.id, [...(labels.get(row.id) ?? []), row.label]);
+  for (const { id, label } of rows) {
+    const live = born.get(id) ?? id;
+    const known = labels.get(live);
+    if (known === undefined) labels.set(live, [label]);
+    else if (!known.includes(label)) known.push(label);
+  }
   return labels;
 }

@@ -11,6 +11,7 @@ import { partitionEntries } from '../engine/partition';
 import { refuse } from '../errors';
 import { applyIdentity, liveNumbers } from './identity';
 import { selectEdges, verdictIdsByPair, type Pair } from './identity-edges';
+import { liveIdOf } from './live-object';
 import { recordMoves } from './registry-events';
 import { changeRegistry } from './registry-lock';
 import { appendVerdicts, bigintArray, takeBack, type SpokenVerdict } from './verdict-log';
@@ -105,7 +106,7 @@ async function selectLive(tx: Tx, actor: GroupActor, numbers: readonly number[])
   const wanted = new Set(numbers);
   const { rows } = await tx.execute<{ given: number; id: number; number: number }>(sql`
     select o.number as given, live.id, live.number
-    from object o join object live on live.id = coalesce(o.merged_into, o.id)
+    from object o join object live on live.id = ${liveIdOf('o')}
     where o.group_id = ${actor.groupId} and o.number = any(${bigintArray(wanted)})
     order by live.number`);
   const missing = [...wanted].find((number) => !rows.some((row) => row.given === number));

@@ -6,6 +6,7 @@ import type { Context, GroupActor } from '../context';
 import { refuse } from '../errors';
 import { catalogueByLabel } from './catalogues';
 import { decodeCursor, encodeCursor } from './cursor';
+import { liveIdOf } from './live-object';
 import { rowsInCone } from './revision-index';
 
 type SourceQuery = z.output<typeof sourceQuery>;
@@ -128,7 +129,7 @@ async function selectPage(tx: Tx, filters: SQL[], key: SortKey, query: SourceQue
       s.sort_value as "sortValue"
     from page s
     left join object o on o.id = s.entry_id
-    left join object live on live.id = coalesce(o.merged_into, o.id)
+    left join object live on live.id = ${liveIdOf('o')}
     order by s.sort_value ${direction} nulls last, s.row_no`);
   return rows;
 }

@@ -183,6 +183,35 @@ describe('the preferred name', () => {
   });
 });
 
+describe('a name chosen while a verdict is on its way', () => {
+  it('is not overwritten', async () => {
+    const { entryIds } = await fresh(line(2, 0.25));
+    const [x = 0, y = 0] = entryIds;
+    const given = await inTransaction(world.context.database, world.actors.owner, async (tx) => {
+      await tx.execute(sql`update object set name = 'Just Chosen', name_chosen = true where id = ${x}`);
+      const waiting = give(x, y, 'same');
+      await untilSomebodyWaits();
+      return { waiting };
+    });
+    await given.waiting;
+    expect((await objectRows(world, [x]))[0]).toMatchObject({
+      name: 'Just Chosen',
+      nameChosen: true,
+      entries: 2,
+    });
+  });
+
+  /** Looks until a transaction of this database waits for another one's lock. */
+  async function untilSomebodyWaits(): Promise<void> {
+    for (;;) {
+      const { rows } = await world.context.database.pool.query<{ waiting: number }>(
+        'select count(*) as waiting from pg_locks where not granted',
+      );
+      if ((rows[0]?.waiting ?? 0) > 0) return;
+    }
+  }
+});
+
 describe('objects that do not change', () => {
   it('keep their version when something else of the group does', async () => {
     const { entryIds } = await fresh(line(4, 0.25));

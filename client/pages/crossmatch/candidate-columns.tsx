@@ -59,9 +59,16 @@ export function candidateColumns({
       id: 'ruler',
       header: '0.01″ to 10′',
       explain: 'The separation on the ruler, with the radius of the run',
-      widthPx: 180,
+      widthPx: 150,
       cell: ({ sepArcsec }) => <Ruler compact marks={[{ sepArcsec }]} limitArcsec={radiusArcsec} />,
       text: () => '',
+    },
+    {
+      id: 'verdict',
+      header: 'Verdict',
+      widthPx: 220,
+      cell: ({ verdict }) => <CandidateVerdict verdict={verdict} />,
+      text: ({ verdict }) => verdict?.value ?? '',
     },
     {
       id: 'pa',
@@ -91,13 +98,6 @@ export function candidateColumns({
       header: 'Mutual best',
       widthPx: 100,
       cell: ({ mutualBest }) => (mutualBest ? 'yes' : 'no'),
-    },
-    {
-      id: 'verdict',
-      header: 'Verdict',
-      widthPx: 230,
-      cell: ({ verdict }) => <CandidateVerdict verdict={verdict} />,
-      text: ({ verdict }) => verdict?.value ?? '',
     },
     {
       id: 'objects',

@@ -21,9 +21,9 @@ const VERDICT_NAMES: Record<VerdictFilter, string> = {
 };
 
 const KIND_NAMES: Record<KindFilter, string> = {
-  any: 'clear and crowded',
-  clear: 'clear: mutual best, no rival',
-  crowded: 'crowded: all others',
+  any: 'any',
+  clear: 'clear',
+  crowded: 'crowded',
 };
 
 /** The conditions on candidates, as controls in one line. */
@@ -64,7 +64,7 @@ export function CandidateFilters({
         onCommit={(minSepArcsec) => onChange({ minSepArcsec })}
       />
       <SepField
-        label="to"
+        label="Separation to"
         value={filter.maxSepArcsec}
         onCommit={(maxSepArcsec) => onChange({ maxSepArcsec })}
       />

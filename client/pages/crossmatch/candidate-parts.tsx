@@ -6,7 +6,7 @@ import { VerdictMark } from '../../components/verdict-mark';
 export function SideName({ side }: { side: Candidate['a'] }) {
   return (
     <span
-      className="inline-flex max-w-full items-center gap-1.5"
+      className="flex max-w-full min-w-0 items-center gap-1.5"
       title={`${side.catalogue}: ${side.designation}`}
     >
       <Stamp catalogue={{ label: side.catalogue, ordinal: side.ordinal }} size={20} />

@@ -109,7 +109,7 @@ function sideLetter(index: number): string {
 function CatalogueLine({ catalogue }: { catalogue: CatalogueSummary }) {
   return (
     <span className="flex min-w-0 flex-wrap items-center gap-x-4 gap-y-0.5">
-      <span className="font-medium">
+      <span className="flex items-center font-medium">
         <Stamp catalogue={catalogue} withLabel />
       </span>
       <span className="min-w-0 text-muted">{catalogue.title}</span>

@@ -13,7 +13,7 @@ export function Diagnosis({ run }: { run: RunDetail }) {
     maxSepText: String(proposedSepArcsec(run.pairs, run.radiusArcsec)),
     mutualBest: true,
     noRival: true,
-    grade: 'certain',
+    grade: 'probable',
   }));
   const ids = run.pairs.map(pairId);
   const [shown, setShown] = useUrlChoice('show', ids, ids[0] ?? '');

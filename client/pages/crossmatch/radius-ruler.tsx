@@ -87,7 +87,8 @@ function EpochNotes({ catalogues }: { catalogues: readonly CatalogueSummary[] })
           </StatusChip>
           <span>
             {a.label} {epochText(a.epochYear)}, {b.label} {epochText(b.epochYear)}: {formatFixed(years, 1)}{' '}
-            years apart. Proper motions are not applied: 100 mas a year make {formatSepArcsec(years * 0.1)}.
+            years apart. Proper motions are not applied: 100 mas a year make{' '}
+            {`${formatFixed(years * 0.1, 2)}″`}.
           </span>
         </li>
       ))}

@@ -21,7 +21,7 @@ export function RunMargin({ run }: { run: RunDetail }) {
           )}
           . Idem {run.softwareVersion}.
         </p>
-        <ul className="mt-2 grid gap-1.5 font-mono text-xs">
+        <ul className="mt-2 grid list-none gap-1.5 pl-0 font-mono text-xs">
           {run.catalogues.map((catalogue) => (
             <li key={catalogue.label}>
               <Stamp catalogue={catalogue} size={18} withLabel />
@@ -41,6 +41,10 @@ export function RunMargin({ run }: { run: RunDetail }) {
         <p>
           Chance pairs are measured: the first catalogue is shifted eight times and compared again. Where a
           shifted field leaves the other catalogue, chance is underestimated.
+        </p>
+        <p>
+          The rule begins at the separation that would hold 99 % of the true pairs, if they scatter about zero
+          as their median says. A median offset makes it larger than it need be.
         </p>
         <p>Numbers from fewer than {FEW_PAIRS} pairs are marked: they say little.</p>
       </MarginNote>

@@ -4,6 +4,7 @@ import { JobStateChip } from '../../components/job-state-chip';
 import { formatCount, formatSepArcsec } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { Stamp } from '../../components/stamp';
+import { HeadCell } from './head-cell';
 
 /** Cross-matches in a table; not virtual, because a group makes few. */
 export function RunTable({ runs }: { runs: readonly RunSummary[] }) {
@@ -12,14 +13,14 @@ export function RunTable({ runs }: { runs: readonly RunSummary[] }) {
       <table className="w-full border-collapse text-sm">
         <thead>
           <tr className="border-b border-edge text-left text-xs text-muted">
-            <Head right>No.</Head>
-            <Head>Title</Head>
-            <Head>Catalogues</Head>
-            <Head right>Radius</Head>
-            <Head right>Candidates</Head>
-            <Head>State</Head>
-            <Head>By</Head>
-            <Head>When</Head>
+            <HeadCell right>No.</HeadCell>
+            <HeadCell>Title</HeadCell>
+            <HeadCell>Catalogues</HeadCell>
+            <HeadCell right>Radius</HeadCell>
+            <HeadCell right>Candidates</HeadCell>
+            <HeadCell>State</HeadCell>
+            <HeadCell>By</HeadCell>
+            <HeadCell>When</HeadCell>
           </tr>
         </thead>
         <tbody>
@@ -58,13 +59,5 @@ export function RunTable({ runs }: { runs: readonly RunSummary[] }) {
         </tbody>
       </table>
     </div>
-  );
-}
-
-function Head({ right = false, children }: { right?: boolean; children: React.ReactNode }) {
-  return (
-    <th scope="col" className={right ? 'py-2 pr-4 text-right font-medium' : 'py-2 pr-4 font-medium'}>
-      {children}
-    </th>
   );
 }

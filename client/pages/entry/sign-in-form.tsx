@@ -1,7 +1,7 @@
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { zodResolver } from '@hookform/resolvers/zod';
-import { signIn } from '../../../shared/schemas/session';
+import { signIn, type SessionState } from '../../../shared/schemas/session';
 import { asProblem, type ProblemError } from '../../api/problem-error';
 import { useSignIn } from '../../api/session';
 import { Button } from '../../components/button';
@@ -10,7 +10,7 @@ import { ProblemNotice } from '../../components/problem-notice';
 import { TextField } from '../../components/text-field';
 
 /** E-mail and password; what was typed stays when the server refuses. */
-export function SignInForm({ onSignedIn }: { onSignedIn: () => void }) {
+export function SignInForm({ onSignedIn }: { onSignedIn: (session: SessionState) => void }) {
   const mutation = useSignIn();
   const [problem, setProblem] = useState<ProblemError | null>(null);
   const { register, handleSubmit, setError, formState } = useForm({
@@ -20,8 +20,7 @@ export function SignInForm({ onSignedIn }: { onSignedIn: () => void }) {
   const submit = handleSubmit(async (values) => {
     setProblem(null);
     try {
-      await mutation.mutateAsync(values);
-      onSignedIn();
+      onSignedIn(await mutation.mutateAsync(values));
     } catch (error) {
       setProblem(showProblemInForm(asProblem(error), setError, ['email', 'password']));
     }

@@ -1,6 +1,14 @@
 import type { DeskTask } from '../../../shared/schemas/run';
 import type { ChartSource } from '../../charts/finding-chart';
 
+/** The chart at first shows the run's radius around A and as much again beside it. */
+const CHART_RADII = 2;
+
+/** Radius (arcsec) of the chart at first: the field that was loaded reaches further and comes in by zooming out. */
+export function chartRadiusArcsec(fieldRadiusArcsec: number, runRadiusArcsec: number): number {
+  return Math.min(fieldRadiusArcsec, CHART_RADII * runRadiusArcsec);
+}
+
 type FieldSource = DeskTask['field'][number] | DeskTask['candidate']['a'];
 
 /** The sources of a task as the finding chart draws them: the pair, other candidates of either side, the rest. */

@@ -12,7 +12,7 @@ export function DeskHeading({ seq, task }: { seq: number; task: DeskTask | undef
     <span className="flex flex-wrap items-baseline gap-x-4 gap-y-1">
       Candidate {seq}
       {task !== undefined && (
-        <span className="flex flex-wrap items-baseline gap-x-4 text-sm font-normal">
+        <span className="flex flex-wrap items-center gap-x-4 text-sm font-normal">
           <CandidateVerdict verdict={task.candidate.verdict} />
           <span className="text-muted">{formatCount(task.undecidedLeft)} undecided in this queue</span>
         </span>
@@ -35,7 +35,7 @@ export function QueueTools({
     <>
       <Popover label={queueName(filter)} ariaLabel={`Filter of the queue: ${queueName(filter)}`}>
         {() => (
-          <div className="w-[min(30rem,75vw)]">
+          <div className="w-[min(18rem,75vw)]">
             <CandidateFilters run={run} filter={filter} onChange={onFilter} />
           </div>
         )}

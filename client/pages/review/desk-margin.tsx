@@ -2,7 +2,7 @@ import { Link } from 'react-router-dom';
 import type { DeskTask, RunDetail } from '../../../shared/schemas/run';
 import { useGroup } from '../../api/use-group';
 import { MarginNote } from '../../components/margin';
-import { formatSepArcsec } from '../../components/quantities';
+import { formatFixed, formatSepArcsec } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { VerdictMark } from '../../components/verdict-mark';
 import { epochGaps } from '../crossmatch/radius-advice';
@@ -22,13 +22,14 @@ export function DeskMargin({ task, run }: { task: DeskTask; run: RunDetail }) {
         <MarginNote key={`${a.label} ${b.label}`} title="Epochs differ">
           {a.label} stands at {epochText(a.epochYear)}, {b.label} at {epochText(b.epochYear)}. Positions are
           not moved to one epoch: in {years.toFixed(1)} years a motion of 100 mas a year makes{' '}
-          {formatSepArcsec(years * 0.1)}.
+          {formatFixed(years * 0.1, 2)}″.
         </MarginNote>
       ))}
       <MarginNote title="What is drawn">
         <p>
-          Within {formatSepArcsec(task.fieldRadiusArcsec)} of A: filled marks are the pair and other
-          candidates of either, open ones the rest. Press a filled mark to go to that candidate.
+          Sources of the compared catalogues within {formatSepArcsec(task.fieldRadiusArcsec)}; zoom out for
+          those further off. Filled marks are the pair and other candidates of either, open ones the rest.
+          Press a filled mark to go to that candidate.
         </p>
         <p>
           The error beside the separation is that of both positions along the line between them. Verdicts: the
@@ -51,7 +52,7 @@ export function DeskMargin({ task, run }: { task: DeskTask; run: RunDetail }) {
 function PastVerdicts({ past }: { past: DeskTask['past'] }) {
   if (past.length === 0) return <p>None yet.</p>;
   return (
-    <ol className="grid gap-2">
+    <ol className="grid list-none gap-2 pl-0">
       {past.map((verdict) => (
         <li key={verdict.id} className="grid gap-0.5 border-b border-rule pb-2 font-mono text-sm">
           <span className="flex flex-wrap items-center gap-x-2">

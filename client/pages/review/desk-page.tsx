@@ -13,6 +13,7 @@ import { Desk } from './desk';
 import { QueueEnd } from './queue-end';
 import { seqOfSearch } from './queue-place';
 import { useFirstSeq } from './use-desk';
+import { useDeskSession, type DeskSession } from './use-desk-session';
 
 /** The review desk of a run; the address names the filter of the queue and the candidate. */
 export function DeskPage() {
@@ -52,11 +53,13 @@ function NothingYet({ run }: { run: RunDetail }) {
 }
 
 function DeskOfRun({ run }: { run: RunDetail }) {
+  const { slug } = useGroup();
   const [search] = useSearchParams();
   const [filter, changeFilter] = useCandidateFilter(DESK_FILTER, ['seq']);
+  const session = useDeskSession(slug, run.run);
   const seq = seqOfSearch(search);
-  if (seq === null) return <FirstOfQueue run={run} filter={filter} onFilter={changeFilter} />;
-  return <Desk run={run} seq={seq} filter={filter} onFilter={changeFilter} />;
+  const queue = { run, filter, onFilter: changeFilter, session };
+  return seq === null ? <FirstOfQueue {...queue} /> : <Desk {...queue} seq={seq} />;
 }
 
 /** Finds the first candidate under the filter and puts it into the address, so that it stays the one in sight. */
@@ -64,10 +67,12 @@ function FirstOfQueue({
   run,
   filter,
   onFilter,
+  session,
 }: {
   run: RunDetail;
   filter: CandidateFilter;
   onFilter: (change: Partial<CandidateFilter>) => void;
+  session: DeskSession;
 }) {
   const { slug } = useGroup();
   const [search] = useSearchParams();
@@ -86,7 +91,7 @@ function FirstOfQueue({
     );
   }
   if (first.data === null || first.data === undefined) {
-    return <QueueEnd run={run} filter={filter} onFilter={onFilter} />;
+    return <QueueEnd run={run} filter={filter} onFilter={onFilter} session={session} />;
   }
   const at = new URLSearchParams(search);
   at.set('seq', String(first.data));

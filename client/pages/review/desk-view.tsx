@@ -1,20 +1,17 @@
-import { useMemo, useRef } from 'react';
+import { useRef } from 'react';
 import type { DeskTask, RunDetail } from '../../../shared/schemas/run';
-import { FindingChart } from '../../charts/finding-chart';
 import { useGroup } from '../../api/use-group';
-import { formatSepArcsec } from '../../components/quantities';
 import { Section } from '../../components/section';
 import { useKeys } from '../../components/keys';
 import type { CandidateFilter } from '../crossmatch/candidate-filter';
-import { chartSources, seqOfSource } from './desk-chart';
+import { DeskChart } from './desk-chart-view';
 import { deskKeysFor, type DeskAct } from './desk-keys';
-import { GivenStrip } from './given-strip';
 import { isOnItsWay, undoable } from './given-verdicts';
 import { OtherCandidates } from './other-candidates';
 import { PairFacts } from './pair-facts';
 import { onwardFrom, seqOfSearch } from './queue-place';
 import { SourceComparison } from './source-comparison';
-import type { useGivenVerdicts } from './use-desk';
+import type { DeskSession } from './use-desk-session';
 import { VerdictBar } from './verdict-bar';
 import { verdictOfDraft, withGrade, type VerdictDraft } from './verdict-draft';
 import { VerdictDetails } from './verdict-details';
@@ -24,25 +21,20 @@ export function DeskView({
   run,
   task,
   filter,
-  draft,
-  onDraft,
-  verdicts,
-  goTo,
+  session,
 }: {
   run: RunDetail;
   task: DeskTask;
   filter: CandidateFilter;
-  draft: VerdictDraft;
-  /** Null when the draft has become a verdict. */
-  onDraft: (draft: VerdictDraft | null) => void;
-  verdicts: ReturnType<typeof useGivenVerdicts>;
-  goTo: (seq: number | null) => void;
+  session: DeskSession;
 }) {
   const mayDecide = useGroup().can('contributor');
+  const { verdicts, goTo } = session;
   const remark = useRef<HTMLTextAreaElement>(null);
   const { candidate, nextSeq, previousSeq } = task;
-  const { seq, a, b } = candidate;
-  const sources = useMemo(() => chartSources(task), [task]);
+  const { seq } = candidate;
+  const draft = session.draftOf(seq);
+  const onDraft = (changed: VerdictDraft | null) => session.setDraft(seq, changed);
   const busy = isOnItsWay(verdicts.given, seq);
 
   const act = (wanted: DeskAct) => {
@@ -75,26 +67,12 @@ export function DeskView({
   );
 
   return (
-    <div className="flex min-w-0 flex-col gap-6 wide:grid wide:grid-cols-[minmax(0,1fr)_18rem] wide:gap-x-6">
-      <div className="grid gap-3 wide:col-span-2">
-        <GivenStrip verdicts={verdicts} goTo={goTo} />
+    <div className="flex min-w-0 flex-col gap-6 wide:grid wide:grid-cols-[minmax(0,1fr)_18rem] wide:grid-rows-[auto_auto_1fr_auto] wide:gap-x-6">
+      <div className="wide:col-span-2">
         <PairFacts candidate={candidate} radiusArcsec={run.radiusArcsec} />
       </div>
       <div className="min-w-0 wide:row-span-2">
-        <FindingChart
-          title={`Field of ${a.designation} and ${b.designation}`}
-          centre={a}
-          radiusArcsec={task.fieldRadiusArcsec}
-          sources={sources}
-          circle={{
-            radiusArcsec: run.radiusArcsec,
-            label: `radius ${formatSepArcsec(run.radiusArcsec)} around A`,
-          }}
-          onChoose={(source) => {
-            const chosen = seqOfSource(task.others, source.id);
-            if (chosen !== null) goTo(chosen);
-          }}
-        />
+        <DeskChart task={task} runRadiusArcsec={run.radiusArcsec} goTo={goTo} />
       </div>
       <VerdictBar
         mayDecide={mayDecide}

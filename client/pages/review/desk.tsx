@@ -1,6 +1,4 @@
-import { useState } from 'react';
 import { useQuery } from '@tanstack/react-query';
-import { useSearchParams } from 'react-router-dom';
 import type { RunDetail } from '../../../shared/schemas/run';
 import { useGroup } from '../../api/use-group';
 import { LinkButton } from '../../components/link-button';
@@ -8,41 +6,30 @@ import { Loading } from '../../components/loading';
 import { Page } from '../../components/page';
 import { ProblemNotice } from '../../components/problem-notice';
 import type { CandidateFilter } from '../crossmatch/candidate-filter';
-import { DeskView } from './desk-view';
 import { DeskHeading, QueueTools } from './desk-heading';
 import { DeskMargin } from './desk-margin';
+import { DeskView } from './desk-view';
+import { GivenStrip } from './given-strip';
 import { NextTask } from './next-task';
-import { withSeq } from './queue-place';
-import { taskQuery, useGivenVerdicts } from './use-desk';
-import { EMPTY_DRAFT, type VerdictDraft } from './verdict-draft';
+import { taskQuery } from './use-desk';
+import type { DeskSession } from './use-desk-session';
 
-/** One candidate after the other: what was typed for each stays until it is sent. */
+/** One candidate of the queue. */
 export function Desk({
   run,
   seq,
   filter,
   onFilter,
+  session,
 }: {
   run: RunDetail;
   seq: number;
   filter: CandidateFilter;
   onFilter: (change: Partial<CandidateFilter>) => void;
+  session: DeskSession;
 }) {
   const { slug } = useGroup();
-  const [, setSearch] = useSearchParams();
-  const [drafts, setDrafts] = useState<ReadonlyMap<number, VerdictDraft>>(new Map());
-  const goTo = (next: number | null) =>
-    setSearch((before) => withSeq(before, next), { preventScrollReset: true });
-  const verdicts = useGivenVerdicts(slug, run.run, goTo);
-  const query = taskQuery(slug, run.run, seq, filter);
-  const task = useQuery(query);
-  const setDraft = (draft: VerdictDraft | null) =>
-    setDrafts((before) => {
-      const after = new Map(before);
-      if (draft === null) after.delete(seq);
-      else after.set(seq, draft);
-      return after;
-    });
+  const task = useQuery(taskQuery(slug, run.run, seq, filter));
   return (
     <Page
       title={`Candidate ${seq} of cross-match ${run.run}`}
@@ -51,6 +38,7 @@ export function Desk({
       actions={<QueueTools run={run} filter={filter} onFilter={onFilter} />}
       margin={task.data !== undefined && <DeskMargin task={task.data} run={run} />}
     >
+      <GivenStrip verdicts={session.verdicts} goTo={session.goTo} />
       {task.isPending && <Loading rows={10} label={`Loading candidate ${seq}`} />}
       {task.isError && task.data === undefined && (
         <div className="grid justify-items-start gap-3">
@@ -60,16 +48,7 @@ export function Desk({
       )}
       {task.data !== undefined && (
         <>
-          <DeskView
-            key={seq}
-            run={run}
-            task={task.data}
-            filter={filter}
-            draft={drafts.get(seq) ?? EMPTY_DRAFT}
-            onDraft={setDraft}
-            verdicts={verdicts}
-            goTo={goTo}
-          />
+          <DeskView key={seq} run={run} task={task.data} filter={filter} session={session} />
           {task.data.nextSeq !== null && (
             <NextTask key={task.data.nextSeq} query={taskQuery(slug, run.run, task.data.nextSeq, filter)} />
           )}

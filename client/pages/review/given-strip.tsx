@@ -17,11 +17,18 @@ export function GivenStrip({
   verdicts: ReturnType<typeof useGivenVerdicts>;
   goTo: (seq: number) => void;
 }) {
+  const mayDecide = useGroup().can('contributor');
   const { given } = verdicts;
   const last = given.at(-1);
   const shown = given.filter((one) => one === last || needsAttention(one));
   return (
     <div role="status" className="screen-only grid gap-1.5 empty:hidden">
+      {/* Holds the place of the first verdict, so that the chart does not move when it is given. */}
+      {mayDecide && shown.length === 0 && (
+        <p className="border-l-4 border-rule px-3 py-1.5 text-muted">
+          What becomes of the verdicts that you give here is said in this line.
+        </p>
+      )}
       {shown.map((one) => (
         <div
           key={one.id}

@@ -2,6 +2,7 @@ import { Link, useSearchParams } from 'react-router-dom';
 import type { Candidate, DeskTask } from '../../../shared/schemas/run';
 import { formatFixed, formatSepArcsec } from '../../components/quantities';
 import { CandidateVerdict, SideName } from '../crossmatch/candidate-parts';
+import { HeadCell } from '../crossmatch/head-cell';
 import { withSeq } from './queue-place';
 
 /** What else the run found for A and for B, the closest first. */
@@ -19,12 +20,12 @@ export function OtherCandidates({ task: { candidate, others } }: { task: DeskTas
       <table className="w-full border-collapse">
         <thead>
           <tr className="border-b border-edge text-left text-xs text-muted">
-            <Head>No.</Head>
-            <Head>Of</Head>
-            <Head>With</Head>
-            <Head right>Separation</Head>
-            <Head right>PA °</Head>
-            <Head>Verdict</Head>
+            <HeadCell>No.</HeadCell>
+            <HeadCell>Of</HeadCell>
+            <HeadCell>With</HeadCell>
+            <HeadCell right>Separation</HeadCell>
+            <HeadCell right>PA °</HeadCell>
+            <HeadCell>Verdict</HeadCell>
           </tr>
         </thead>
         <tbody>

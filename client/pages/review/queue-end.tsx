@@ -5,21 +5,26 @@ import { LinkButton } from '../../components/link-button';
 import { Page } from '../../components/page';
 import { DESK_FILTER, isNarrowed, type CandidateFilter } from '../crossmatch/candidate-filter';
 import { CandidateFilters } from '../crossmatch/candidate-filters';
+import { GivenStrip } from './given-strip';
+import type { DeskSession } from './use-desk-session';
 
 /** No candidate is left under the filter: either all is decided, or the filter leaves everything out. */
 export function QueueEnd({
   run,
   filter,
   onFilter,
+  session,
 }: {
   run: RunDetail;
   filter: CandidateFilter;
   onFilter: (change: Partial<CandidateFilter>) => void;
+  session: DeskSession;
 }) {
   const narrowed = isNarrowed(filter, DESK_FILTER);
   const toRun = <LinkButton to={`../cross-match/${run.run}`}>To the cross-match</LinkButton>;
   return (
     <Page title={`Review of cross-match ${run.run}`} lead={run.title}>
+      <GivenStrip verdicts={session.verdicts} goTo={session.goTo} />
       {narrowed ? (
         <>
           <CandidateFilters run={run} filter={filter} onChange={onFilter} />

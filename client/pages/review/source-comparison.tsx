@@ -1,16 +1,16 @@
-import { useMemo, type ReactNode } from 'react';
+import { memo, useMemo, type ReactNode } from 'react';
 import { Link } from 'react-router-dom';
 import type { Candidate, DeskTask } from '../../../shared/schemas/run';
 import { useGroup } from '../../api/use-group';
 import { Coordinates } from '../../components/coordinates';
-import { formatAngle, formatSepArcsec } from '../../components/quantities';
+import { formatAngle, formatSepArcsec, plural } from '../../components/quantities';
 import { Stamp } from '../../components/stamp';
 import { compareRows, type NamedCell, type SharedColumn } from './differing-values';
 
 type Side = Candidate['a'];
 
 /** The two sources beside each other: position, errors, and every original column as written. */
-export function SourceComparison({ task }: { task: DeskTask }) {
+export const SourceComparison = memo(function SourceComparison({ task }: { task: DeskTask }) {
   const { a, b } = task.candidate;
   const { shared, onlyA, onlyB } = useMemo(() => compareRows(task.rowA, task.rowB), [task.rowA, task.rowB]);
   const differing = shared.filter(({ relation }) => relation === 'differs').length;
@@ -45,7 +45,7 @@ export function SourceComparison({ task }: { task: DeskTask }) {
       <p className="text-xs text-muted">
         {shared.length === 0
           ? 'The two catalogues have no column of the same name.'
-          : `${shared.length} columns of the same name; ${differing} with values that differ, marked ≠.`}
+          : `${plural(shared.length, 'column', 'columns')} of the same name; ${differing} with different values, marked ≠.`}
       </p>
       <div className="grid grid-cols-2 gap-4">
         <OwnColumns side={a} columns={onlyA} />
@@ -53,7 +53,7 @@ export function SourceComparison({ task }: { task: DeskTask }) {
       </div>
     </div>
   );
-}
+});
 
 function SideHead({ letter, side }: { letter: 'A' | 'B'; side: Side }) {
   return (

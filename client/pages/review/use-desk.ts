@@ -41,7 +41,11 @@ export function useFirstSeq(group: string, run: number, filter: CandidateFilter)
 }
 
 /** The verdicts given at this desk: sends them, keeps what became of each, takes the last one back. */
-export function useGivenVerdicts(group: string, run: number, onTakenBack: (seq: number) => void) {
+export function useGivenVerdicts(
+  group: string,
+  run: number,
+  onTakenBack: (given: { seq: number; body: NewVerdict }) => void,
+) {
   const client = useQueryClient();
   const [given, dispatch] = useReducer(givenAfter, []);
   const lastId = useRef(0);
@@ -56,11 +60,11 @@ export function useGivenVerdicts(group: string, run: number, onTakenBack: (seq: 
     onError: (problem, { id }) => dispatch({ type: 'refused', id, problem }),
   });
   const takeBack = useMutation({
-    mutationFn: ({ verdictId }: { id: number; seq: number; verdictId: number }) =>
+    mutationFn: ({ verdictId }: { id: number; seq: number; body: NewVerdict; verdictId: number }) =>
       request({ method: 'DELETE', path: groupPath(group, 'verdicts', verdictId), answer: verdictResult }),
-    onSuccess: (_, { id, seq }) => {
+    onSuccess: (_, { id, seq, body }) => {
       dispatch({ type: 'taken back', id });
-      onTakenBack(seq);
+      onTakenBack({ seq, body });
       return refreshDesk(client, group, run);
     },
     onError: (problem, { id }) => dispatch({ type: 'not taken back', id, problem }),
@@ -84,7 +88,7 @@ export function useGivenVerdicts(group: string, run: number, onTakenBack: (seq: 
       const verdictId = last?.result?.verdict?.id;
       if (last === null || verdictId === undefined) return;
       dispatch({ type: 'taking back', id: last.id });
-      takeBack.mutate({ id: last.id, seq: last.seq, verdictId });
+      takeBack.mutate({ id: last.id, seq: last.seq, body: last.body, verdictId });
     },
     dismiss: (id: number) => dispatch({ type: 'dismissed', id }),
   };

@@ -28,7 +28,7 @@ export function VerdictBar({
     <div
       role="group"
       aria-label="Verdict"
-      className="screen-only sticky bottom-0 z-20 order-last -mx-4 grid gap-2 border-t border-edge bg-page px-4 py-3 sm:mx-0 sm:px-0 wide:static wide:order-none wide:border-t-0 wide:py-0"
+      className="screen-only sticky bottom-0 z-20 order-last -mx-4 grid content-start gap-2 border-t border-edge bg-page px-4 py-3 sm:mx-0 sm:px-0 wide:static wide:order-none wide:border-t-0 wide:py-0"
     >
       {!mayDecide && (
         <p className="text-muted">
@@ -42,9 +42,9 @@ export function VerdictBar({
             key={value}
             disabled={!mayDecide || busy}
             onClick={() => onAct({ kind: 'verdict', value })}
-            className="min-h-11 min-w-0 justify-between!"
+            className="min-h-11 min-w-0 justify-center! px-1.5! sm:justify-between! sm:px-3!"
           >
-            <span className="inline-flex min-w-0 items-center gap-2">
+            <span className="inline-flex min-w-0 items-center gap-1.5 sm:gap-2">
               <VerdictSign value={value} />
               {WORDS[value]}
             </span>

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { newVerdict } from '../../../shared/schemas/verdict';
-import { EMPTY_DRAFT, verdictOfDraft, withFlag, withGrade } from './verdict-draft';
+import { draftOfVerdict, EMPTY_DRAFT, verdictOfDraft, withFlag, withGrade } from './verdict-draft';
 
 const side = (entryId: number) => ({
   catalogue: 'LAN-O',
@@ -42,5 +42,10 @@ describe('a verdict before it is given', () => {
       remark: 'near a bright star',
       run: 3,
     });
+  });
+
+  it('comes back as it was typed when the verdict is taken back', () => {
+    const draft = withFlag({ grade: 'possible', flags: [], remark: 'two in the beam' }, 'blend');
+    expect(draftOfVerdict(verdictOfDraft({ a: side(4), b: side(9) }, 'same', draft, 3))).toEqual(draft);
   });
 });

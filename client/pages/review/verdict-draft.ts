@@ -41,3 +41,8 @@ export function verdictOfDraft(
     run,
   };
 }
+
+/** What had been chosen and typed for a verdict, to begin from when it is taken back. */
+export function draftOfVerdict({ grade, flags, remark }: NewVerdict): VerdictDraft {
+  return { grade, flags, remark };
+}
