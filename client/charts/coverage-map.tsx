@@ -8,7 +8,6 @@ import { CoverageLegend, GraticuleNumbers } from './coverage-parts';
 import { classOpacity, countClasses } from './coverage-classes';
 import { graticule } from './sky-graticule';
 import {
-  countClasses,
   outlines,
   PLOT_BOTTOM_PX,
   PLOT_LEFT_PX,

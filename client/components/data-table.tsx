@@ -2,7 +2,7 @@ import { useEffect, useRef, type CSSProperties, type ReactNode, type RefObject }
 import { useVirtualizer } from '@tanstack/react-virtual';
 import { Loading } from './loading';
 import { ProblemNotice } from './problem-notice';
-import { columnWidthPx, visibleColumns, type Column } from './table-column';
+import { columnGrid, visibleColumns, type Column } from './table-column';
 import { TableHead } from './table-head';
 import { LoadingRow, TableRow } from './table-row';
 import { TableTools } from './table-tools';
@@ -92,10 +92,9 @@ function TableBody<Row>({
     if (wantsMore) loadMore?.();
   }, [wantsMore, loadMore, rows.length]);
 
-  const grid: CSSProperties = {
-    gridTemplateColumns: shown.map((c) => `minmax(${columnWidthPx(c)}px, ${columnWidthPx(c)}fr)`).join(' '),
-    minWidth: shown.reduce((sum, column) => sum + columnWidthPx(column), 0),
-  };
+  const grid = columnGrid(shown);
+  // The head is a row as well; -1 says that the number is not known.
+  const rowCount = total === null || total === undefined ? (hasMore ? -1 : rows.length + 1) : total + 1;
   return (
     <div
       ref={region}
@@ -105,12 +104,7 @@ function TableBody<Row>({
       className="relative overflow-auto border border-rule bg-raised -outline-offset-2"
       style={{ maxHeight: height }}
     >
-      <div
-        role="table"
-        aria-label={label}
-        aria-rowcount={total === null || total === undefined ? (hasMore ? -1 : rows.length + 1) : total + 1}
-        aria-colcount={shown.length}
-      >
+      <div role="table" aria-label={label} aria-rowcount={rowCount} aria-colcount={shown.length}>
         <TableHead columns={shown} table={table} style={{ ...grid, height: rowHeightPx }} />
         <div
           role="rowgroup"

@@ -27,8 +27,16 @@ export interface TableSort {
 
 const DEFAULT_WIDTH_PX = 120;
 
-export function columnWidthPx<Row>(column: Column<Row>): number {
-  return column.widthPx ?? DEFAULT_WIDTH_PX;
+/** The grid that head and rows share. */
+export function columnGrid<Row>(columns: readonly Column<Row>[]): {
+  gridTemplateColumns: string;
+  minWidth: number;
+} {
+  const widths = columns.map((column) => column.widthPx ?? DEFAULT_WIDTH_PX);
+  return {
+    gridTemplateColumns: widths.map((width) => `minmax(${width}px, ${width}fr)`).join(' '),
+    minWidth: widths.reduce((sum, width) => sum + width, 0),
+  };
 }
 
 /** Columns to show: those named, in the table's own order; all that are not hidden when nothing was chosen. */

@@ -11,7 +11,7 @@ import type { PositionColumns, PositionRange } from './positions';
 export const RECORD_SIZE = 3;
 
 /** Rows of A and B together in a bucket: 32k records and their cells fit into a second-level cache. */
-const ROWS_PER_BUCKET = 12_288;
+const ROWS_PER_BUCKET = 16_384;
 /** Bin numbers are kept in 16 bits; the last value means "in no bin". */
 const NO_BIN = 0xffff;
 const MAX_BINS = 8_192;

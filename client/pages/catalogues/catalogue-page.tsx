@@ -59,7 +59,7 @@ function CatalogueView({ group, catalogue }: { group: string; catalogue: Catalog
         </span>
       }
       lead={catalogue.title}
-      actions={catalogue.state === 'ready' && <LinkButton to="../cross-match/new" relative="path">Cross-match</LinkButton>}
+      actions={catalogue.state === 'ready' && <LinkButton to="../cross-match/new">Cross-match</LinkButton>}
       margin={<Provenance catalogue={catalogue} />}
     >
       {busy && (

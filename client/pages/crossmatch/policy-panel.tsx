@@ -35,6 +35,7 @@ export function PolicyPanel({
   const jobId = openJob ?? startedJob;
   return (
     <Section title="Policy for clear cases">
+      {jobId !== null && <JobCard key={jobId} group={group.slug} jobId={jobId} onFinished={onFinished} />}
       {group.can('curator') ? (
         <RuleWithCount
           run={run}
@@ -49,7 +50,6 @@ export function PolicyPanel({
           what rules have decided.
         </p>
       )}
-      {jobId !== null && <JobCard key={jobId} group={group.slug} jobId={jobId} onFinished={onFinished} />}
       <AppliedPolicies run={run} busy={openJob !== null} onStarted={setStartedJob} />
     </Section>
   );
@@ -167,12 +167,12 @@ function ConfirmText({ rule, count }: { rule: PolicyRule; count: PolicyCount }) 
     <>
       <p>
         Rule: {ruleText(rule)}. {plural(count.automatic, 'candidate becomes', 'candidates become')}{' '}
-        &lsquo;same&rsquo;, each shown as automatic; their objects are merged.
+        &lsquo;same&rsquo;, shown as automatic; the objects are merged.
       </p>
       <p>
         {plural(count.toReview, 'candidate stays', 'candidates stay')} for people
         {count.conflicts > 0 &&
-          `, among them ${formatCount(count.conflicts)} that would join what a 'different' verdict keeps apart`}
+          `, among them ${formatCount(count.conflicts)} that would join what a ‘different’ verdict keeps apart`}
         . {plural(count.alreadyDecided, 'verdict', 'verdicts')} in force on fitting candidates{' '}
         {count.alreadyDecided === 1 ? 'is' : 'are'} left alone.
       </p>

@@ -4,6 +4,7 @@ import type { Conflict } from '../../../shared/schemas/verdict';
 import { useGroup } from '../../api/use-group';
 import { Button } from '../../components/button';
 import { VerdictSign } from '../../components/verdict-mark';
+import { sourceName } from './source-name';
 
 type ChainLink = Conflict['a'];
 
@@ -67,9 +68,5 @@ export function ConflictItem({
 }
 
 function Name({ link }: { link: ChainLink }) {
-  return (
-    <span className="whitespace-nowrap">
-      <span className="text-muted">{link.catalogue}</span> {link.designation}
-    </span>
-  );
+  return <span className="whitespace-nowrap">{sourceName(link)}</span>;
 }

@@ -7,6 +7,7 @@ import { ProblemNotice } from '../../components/problem-notice';
 import { formatCount } from '../../components/quantities';
 import { Section } from '../../components/section';
 import { ConflictItem } from './conflict-item';
+import { sourceName } from './source-name';
 import { useConflicts, useTakeBackVerdict } from './use-review';
 
 /** Which of the two verdicts of a conflict is to go. */
@@ -51,7 +52,7 @@ export function ConflictSection() {
       <ConfirmDialog
         open={asked !== null}
         onClose={() => setAsked(null)}
-        title={`Take the '${asked?.value ?? 'same'}' verdict back?`}
+        title={`Take the ‘${asked?.value ?? 'same'}’ verdict back?`}
         confirmLabel="Take it back"
         busy={takeBack.isPending}
         problem={takeBack.error}
@@ -74,11 +75,10 @@ function WithdrawalText({ conflict, value }: Withdrawal) {
   const [one, other] = value === 'same' ? [a, b] : [forbiddenA, forbiddenB];
   return (
     <p>
-      One verdict on {one.catalogue} {one.designation} and {other.catalogue} {other.designation} loses its
-      force; it stays in the log.{' '}
+      One verdict on {sourceName(one)} and {sourceName(other)} loses its force; it stays in the log.{' '}
       {value === 'same'
         ? 'No object changes, because it was not carried out.'
-        : "The 'same' verdict is then carried out, if nothing else forbids it, and objects are merged."}
+        : 'The ‘same’ verdict is then carried out, if nothing else forbids it, and objects are merged.'}
     </p>
   );
 }

@@ -110,8 +110,8 @@ function ConflictText({ value, objectA, objectB }: { value: string; objectA: num
     <>
       <strong className="text-warn">saved, in conflict</strong>:{' '}
       {value === 'same'
-        ? "it would join sources that a 'different' verdict keeps apart, so it is not carried out."
-        : "a 'same' verdict joins these two through others; that one is no longer carried out."}{' '}
+        ? 'it would join sources that a ‘different’ verdict keeps apart, so it is not carried out.'
+        : 'a ‘same’ verdict joins these two through others; that one is no longer carried out.'}{' '}
       {objectA === objectB ? (
         <>
           Both stay in <ObjectLink number={objectA} />.
