@@ -101,8 +101,8 @@ export function* coneJoinChunks(
   try {
     yield* joinBuckets(buckets, bRange, radius, totalRows, maxPairs);
   } finally {
-    giveBackNumbers(buckets.aRecords);
-    giveBackNumbers(buckets.bRecords);
+    giveBackNumbers(buckets.a.records);
+    giveBackNumbers(buckets.b.records);
   }
 }
 
@@ -118,12 +118,12 @@ function* joinBuckets(
   const buffer = createPairBuffer(ROWS_PER_CHUNK * 2);
   let found = 0;
   for (let bucket = 0; bucket < buckets.bucketCount; bucket += 1) {
-    const aFrom = buckets.aStart[bucket] as number;
-    const aTo = buckets.aStart[bucket + 1] as number;
+    const aFrom = buckets.a.start[bucket] as number;
+    const aTo = buckets.a.end[bucket] as number;
     if (!prepareGrid(grid, buckets, bucket, radius)) continue;
     for (let from = aFrom; from < aTo; from += ROWS_PER_CHUNK) {
       const to = Math.min(from + ROWS_PER_CHUNK, aTo);
-      scanRows(buckets.aRecords, from, to, grid, radius, buffer);
+      scanRows(buckets.a.records, from, to, grid, radius, buffer);
       found += buffer.length;
       if (found > maxPairs) throw new TooManyPairs(found, maxPairs);
       yield { pairs: takePairs(buffer), doneRows: to, totalRows };
@@ -132,19 +132,19 @@ function* joinBuckets(
 }
 
 /** False when the bucket can't hold a pair. */
-function prepareGrid(grid: JoinGrid, buckets: JoinBuckets, bucket: number, radius: JoinRadius): boolean {
-  const aFrom = buckets.aStart[bucket] as number;
-  const aTo = buckets.aStart[bucket + 1] as number;
-  const bFrom = buckets.bStart[bucket] as number;
-  const bTo = buckets.bStart[bucket + 1] as number;
+function prepareGrid(grid: JoinGrid, { a, b }: JoinBuckets, bucket: number, radius: JoinRadius): boolean {
+  const aFrom = a.start[bucket] as number;
+  const aTo = a.end[bucket] as number;
+  const bFrom = b.start[bucket] as number;
+  const bTo = b.end[bucket] as number;
   if (aFrom === aTo || bFrom === bTo) return false;
   let min = Infinity;
   let max = -Infinity;
   for (let at = aFrom * RECORD_SIZE + 1; at < aTo * RECORD_SIZE; at += RECORD_SIZE) {
-    const dec = buckets.aRecords[at] as number;
+    const dec = a.records[at] as number;
     if (dec < min) min = dec;
     if (dec > max) max = dec;
   }
-  fillJoinGrid(grid, buckets.bRecords, bFrom, bTo, min, max, radius);
+  fillJoinGrid(grid, b.records, bFrom, bTo, min, max, radius);
   return true;
 }

@@ -7,7 +7,7 @@ import { Loading } from '../../components/loading';
 import { MarginNote } from '../../components/margin';
 import { Page } from '../../components/page';
 import { ProblemNotice } from '../../components/problem-notice';
-import { formatCount, plural } from '../../components/quantities';
+import { formatCount } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { Stamp } from '../../components/stamp';
 import { StatusChip } from '../../components/status-chip';
@@ -55,7 +55,7 @@ export function CataloguesPage() {
 
 function CatalogueTable({ items }: { items: readonly CatalogueSummary[] }) {
   return (
-    <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Catalogues">
+    <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="Catalogues">
       <table className="w-full border-collapse text-sm">
         <thead>
           <tr className="border-b border-edge text-left text-xs text-muted">
@@ -91,7 +91,7 @@ function CatalogueTable({ items }: { items: readonly CatalogueSummary[] }) {
                 ) : (
                   <Link to={`${item.label}?tab=set-aside`} className="text-link">
                     {formatCount(item.setAside)}
-                    <span className="sr-only"> {plural(item.setAside, 'row', 'rows')} set aside</span>
+                    <span className="sr-only"> rows set aside</span>
                   </Link>
                 )}
               </td>

@@ -3,7 +3,7 @@ import type { CatalogueDetail } from '../../../shared/schemas/catalogue';
 /** The columns of the file and what the mapping makes of each. */
 export function ColumnList({ columns }: { columns: CatalogueDetail['columns'] }) {
   return (
-    <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Columns of the file">
+    <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="Columns of the file">
       <table className="w-full border-collapse text-sm">
         <thead>
           <tr className="border-b border-edge text-left text-xs text-muted">

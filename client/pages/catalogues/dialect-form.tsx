@@ -74,7 +74,7 @@ function SampleTable({ inspection }: { inspection: FileInspection }) {
   return (
     <details>
       <summary className="cursor-pointer text-link">The first rows as written</summary>
-      <div className="mt-2 overflow-x-auto" tabIndex={0} role="region" aria-label="The first rows as written">
+      <div className="mt-2 relative overflow-x-auto" tabIndex={0} role="region" aria-label="The first rows as written">
         <table className="border-collapse text-xs">
           <thead>
             <tr className="border-b border-edge text-left text-muted">

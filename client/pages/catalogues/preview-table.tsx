@@ -29,8 +29,7 @@ export function PreviewTable({
       {preview.setAside.length > 0 && (
         <div className="grid gap-1">
           <p className="font-medium text-warn">
-            {preview.setAside.length} of the rows looked at {plural(preview.setAside.length, 'will be', 'will be')} set
-            aside:
+            {plural(preview.setAside.length, 'row', 'rows')} of those looked at will be set aside:
           </p>
           <ul className="grid gap-1">
             {preview.setAside.map((row) => (
@@ -52,7 +51,7 @@ function UnderstoodRows({ rows }: { rows: readonly UnderstoodRow[] }) {
   const showMotion = has((row) => row.pmRaMasYr);
   const showRedshift = has((row) => row.redshift);
   return (
-    <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Rows as they will be understood">
+    <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="Rows as they will be understood">
       <table className="w-full border-collapse text-xs">
         <thead>
           <tr className="border-b border-edge text-left text-muted">

@@ -9,7 +9,7 @@ import { Loading } from '../../components/loading';
 import { MarginNote } from '../../components/margin';
 import { Page } from '../../components/page';
 import { ProblemNotice } from '../../components/problem-notice';
-import { formatCount, plural } from '../../components/quantities';
+import { plural } from '../../components/quantities';
 import { Section } from '../../components/section';
 import { useDebounced } from '../../components/use-debounced';
 import { RecipeForm } from './recipe-form';
@@ -80,8 +80,7 @@ function Builder({ group, options }: { group: string; options: ExportOptions }) 
           <span className="flex flex-wrap items-center gap-3">
             {preview.data !== undefined && (
               <span className="text-muted">
-                {formatCount(preview.data.rows)} {plural(preview.data.rows, 'row', 'rows')},{' '}
-                {preview.data.header.length} columns
+                {plural(preview.data.rows, 'row', 'rows')}, {plural(preview.data.header.length, 'column', 'columns')}
               </span>
             )}
             <DownloadLink kind="main" href={href}>
@@ -107,7 +106,7 @@ function PreviewRows({ header, sample }: { header: readonly string[]; sample: re
   const tsv = [header, ...sample].map((row) => row.join('\t')).join('\n');
   return (
     <div className="grid gap-2">
-      <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="First rows of the merged table">
+      <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="First rows of the merged table">
         <table className="border-collapse text-xs">
           <thead>
             <tr className="border-b border-edge text-left text-muted">

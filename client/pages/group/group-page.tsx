@@ -74,7 +74,7 @@ function MemberTable({ group, members }: { group: string; members: readonly Memb
   return (
     <div className="grid gap-3">
       {change.error !== null && <ProblemNotice problem={change.error} />}
-      <div className="overflow-x-auto" tabIndex={0} role="region" aria-label="Members">
+      <div className="relative overflow-x-auto" tabIndex={0} role="region" aria-label="Members">
         <table className="w-full border-collapse text-sm">
           <thead>
             <tr className="border-b border-edge text-left text-xs text-muted">

@@ -10,6 +10,7 @@ import { useUrlChoice } from '../../components/use-url-choice';
 import { useObjectField } from './use-objects';
 
 const RADII = ['10', '30', '60', '300'] as const;
+const RADIUS_WORDS: Record<(typeof RADII)[number], string> = { '10': '10″', '30': '30″', '60': '1′', '300': '5′' };
 
 /** The sky around the object, and the nearest sources that are not part of it. */
 export function FieldSection({ group, object }: { group: string; object: ObjectDetail }) {
@@ -32,7 +33,7 @@ export function FieldSection({ group, object }: { group: string; object: ObjectD
           >
             {RADII.map((one) => (
               <option key={one} value={one}>
-                {formatSepArcsec(Number(one))}
+                {RADIUS_WORDS[one]}
               </option>
             ))}
           </select>

@@ -22,22 +22,24 @@ export function PairFacts({ candidate, radiusArcsec }: { candidate: Candidate; r
         marks={[{ sepArcsec, errArcsec, label: 'separation', emphasis: true }]}
         limitArcsec={radiusArcsec}
       />
-      <dl className="flex flex-wrap gap-x-6 gap-y-1 sm:col-span-2">
-        <Fact name="position angle">{paDeg === null ? 'not defined' : formatAngle(paDeg)}</Fact>
-        <Fact name={`rank for ${a.catalogue}`}>{rankA}</Fact>
-        <Fact name={`rank for ${b.catalogue}`}>{rankB}</Fact>
-        <Fact name="rivals">
-          {rivalsA} / {rivalsB}
-        </Fact>
-        <div className="flex flex-wrap gap-2">
+      <div className="flex flex-wrap items-center gap-x-6 gap-y-1 sm:col-span-2">
+        <dl className="flex flex-wrap gap-x-6 gap-y-1">
+          <Fact name="position angle">{paDeg === null ? 'not defined' : formatAngle(paDeg)}</Fact>
+          <Fact name={`rank for ${a.catalogue}`}>{rankA}</Fact>
+          <Fact name={`rank for ${b.catalogue}`}>{rankB}</Fact>
+          <Fact name="rivals">
+            {rivalsA} / {rivalsB}
+          </Fact>
+        </dl>
+        <span className="flex flex-wrap gap-2">
           {mutualBest ? (
             <StatusChip>mutual best</StatusChip>
           ) : (
             <StatusChip tone="warn">not mutual best</StatusChip>
           )}
           {clear ? <StatusChip>clear</StatusChip> : <StatusChip tone="warn">crowded</StatusChip>}
-        </div>
-      </dl>
+        </span>
+      </div>
     </div>
   );
 }

@@ -145,7 +145,7 @@ function Waiting({ state }: { state: Today }) {
         {open.map((run) => (
           <li key={run.run} className="flex flex-wrap items-center gap-x-3 gap-y-1">
             <Link to={`../review/${run.run}`} className="text-link">
-              {formatCount(run.undecided)} undecided {plural(run.undecided, 'candidate', 'candidates')}
+              {plural(run.undecided, 'undecided candidate', 'undecided candidates')}
             </Link>
             <span>
               in cross-match {run.run}
@@ -157,21 +157,21 @@ function Waiting({ state }: { state: Today }) {
         {state.conflicts > 0 && (
           <li>
             <Link to="../review" className="text-link">
-              {formatCount(state.conflicts)} {plural(state.conflicts, 'conflict', 'conflicts')}
+              {plural(state.conflicts, 'conflict', 'conflicts')}
             </Link>{' '}
             between verdicts
           </li>
         )}
         {state.contestedNames > 0 && (
           <li>
-            {formatCount(state.contestedNames)} {plural(state.contestedNames, 'name points', 'names point')} at two live
+            {plural(state.contestedNames, 'name points', 'names point')} at two live
             objects
           </li>
         )}
         {state.setAsideRows > 0 && (
           <li>
             <Link to="../catalogues" className="text-link">
-              {formatCount(state.setAsideRows)} {plural(state.setAsideRows, 'row', 'rows')} set aside
+              {plural(state.setAsideRows, 'row', 'rows')} set aside
             </Link>{' '}
             at import
           </li>
