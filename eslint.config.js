@@ -45,6 +45,13 @@ export default defineConfig([
     ],
   ),
   boundary(
+    ['client/pages/**/*.{ts,tsx}'],
+    [
+      [['**/server/**', '**/db/**', '**/seed/**', '**/tests/**'], 'client imports shared/ only'],
+      [['../[a-z]*/**'], 'a page never imports the folder of another page'],
+    ],
+  ),
+  boundary(
     ['client/charts/**/*.{ts,tsx}'],
     [
       [['**/server/**', '**/db/**', '**/seed/**', '**/tests/**'], 'client imports shared/ only'],

@@ -39,6 +39,8 @@ export interface Database {
 export function openDatabase(url: string, onIdleError: (error: Error) => void, max = 10): Database {
   const pool = new pg.Pool({ connectionString: url, max, connectionTimeoutMillis: 10_000 });
   pool.on('error', onIdleError);
+  // A connection may also die while it is checked out, between two queries; nobody else listens then.
+  pool.on('connect', (client) => client.on('error', onIdleError));
   return { pool, close: () => pool.end() };
 }
 

@@ -4,8 +4,3 @@ export function numberOrNull(value: unknown): number | null {
   const text = typeof value === 'string' ? value.trim().replace(/[−–]/, '-') : '';
   return text === '' ? null : Number(text);
 }
-
-/** The same for optional fields: undefined when empty. */
-export function numberOrUndefined(value: unknown): number | undefined {
-  return numberOrNull(value) ?? undefined;
-}

@@ -27,7 +27,8 @@ export function localFileStorage(folder: string): FileStorage {
     if (!SAFE_KEY.test(key)) throw new RangeError(`key is not a storage key: ${JSON.stringify(key)}`);
     return path.join(folder, key);
   };
-  const partOf = (key: string) => `${pathOf(key)}.${process.pid}.part`;
+  // Two writers of one key may be at work at once, in one process or in several; the last to finish wins.
+  const partOf = (key: string) => `${pathOf(key)}.${crypto.randomUUID()}.part`;
   return {
     async create(key) {
       await mkdir(folder, { recursive: true });

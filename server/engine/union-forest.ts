@@ -13,7 +13,8 @@ export interface Forest {
 }
 
 export function createForest(size: number): Forest {
-  const parent = Int32Array.from({ length: size }, (_, node) => node);
+  const parent = new Int32Array(size);
+  for (let node = 0; node < size; node += 1) parent[node] = node;
   const members = new Int32Array(size).fill(1);
   // The pairs that joined, as a tree of nodes: `above` is the neighbour towards the top.
   const above = new Int32Array(size).fill(-1);

@@ -1,4 +1,3 @@
-import Fuse from 'fuse.js';
 import { sql } from 'drizzle-orm';
 import type { z } from 'zod';
 import { inTransaction, type Tx } from '../../db/client';
@@ -7,15 +6,12 @@ import { nameKey } from '../../shared/astro/designations';
 import type { FindAnswer, findQuery } from '../../shared/schemas/find';
 import type { Context, GroupActor } from '../context';
 import { liveIdOf } from './live-object';
-import { differenceInWords } from './near-names';
-import { OBJECT_COLUMNS, objectsInCone, summaries, type ObjectRow } from './objects';
+import { nearMisses } from './near-misses';
+import { liveObjectsOf, OBJECT_COLUMNS, objectsInCone, summaries, type ObjectRow } from './objects';
 
 type FindQuery = z.output<typeof findQuery>;
 
 const NUMBER = /^#?\s*(\d{1,15})$/;
-/** Trigram similarity from which a name counts as near; below it the lists are mostly noise (common practice, no source). */
-const NEAR_SIMILARITY = 0.45;
-const NEAR_CANDIDATES = 60;
 
 /** Reads what a person typed as an object number, a position or a name, and says which. Near misses are never taken. */
 export async function find(context: Context, actor: GroupActor, query: FindQuery): Promise<FindAnswer> {
@@ -63,8 +59,7 @@ async function findPosition(
   position: { raDeg: number; decDeg: number },
 ): Promise<FindAnswer> {
   const centre = { ...position, radiusArcsec: query.radiusArcsec };
-  const live = [sql`o.group_id = ${actor.groupId}`, sql`o.merged_into is null`];
-  const near = (await objectsInCone(tx, centre, live)).slice(0, query.limit);
+  const near = (await objectsInCone(tx, centre, liveObjectsOf(actor))).slice(0, query.limit);
   return {
     ...nothing(query.q, 'position'),
     position: centre,
@@ -84,35 +79,5 @@ async function findName(tx: Tx, actor: GroupActor, query: FindQuery): Promise<Fi
   const described = await summaries(tx, rows.map((row) => ({ ...row, sepArcsec: null })));
   const exact = described.map((summary, i) => ({ ...summary, alias: rows[i]?.alias ?? null }));
   if (exact.length > 0) return { ...answer, exact };
-  return { ...answer, nearMisses: await nearNames(tx, actor, query, key) };
-}
-
-interface NearRow {
-  alias: string;
-  key: string;
-  number: number;
-  name: string;
-  [key: string]: unknown;
-}
-
-/** Names that begin like the typed one or share most of its trigrams, the likeliest first, each with what differs. */
-async function nearNames(tx: Tx, actor: GroupActor, query: FindQuery, key: string): Promise<FindAnswer['nearMisses']> {
-  await tx.execute(sql`select set_config('pg_trgm.similarity_threshold', ${String(NEAR_SIMILARITY)}, true)`);
-  const { rows } = await tx.execute<NearRow>(sql`
-    select near.alias, near.key, l.number, l.name from (
-      (select a.name as alias, a.key, a.object_id from alias a
-        where a.group_id = ${actor.groupId} and a.retired_at is null and a.key >= ${key} and a.key < ${`${key}\uffff`}
-        order by a.key limit ${NEAR_CANDIDATES})
-      union
-      (select a.name, a.key, a.object_id from alias a
-        where a.group_id = ${actor.groupId} and a.retired_at is null and a.key % ${key}
-        order by similarity(a.key, ${key}) desc, a.id limit ${NEAR_CANDIDATES})
-    ) as near
-    join object b on b.id = near.object_id join object l on l.id = ${liveIdOf('b')}`);
-  const fuse = new Fuse(rows, { keys: ['key'], threshold: 0.6, ignoreLocation: true, includeScore: true });
-  const ranked = fuse.search(key).map((hit) => hit.item);
-  const others = rows.filter((row) => !ranked.includes(row)).sort((a, b) => (a.key < b.key ? -1 : 1));
-  return [...ranked, ...others]
-    .slice(0, query.limit)
-    .map(({ alias, key: nearKey, number, name }) => ({ alias, number, name, reason: differenceInWords(key, nearKey) }));
+  return { ...answer, nearMisses: await nearMisses(tx, actor, key, query.limit) };
 }

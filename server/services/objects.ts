@@ -5,16 +5,17 @@ import { nameKey } from '../../shared/astro/designations';
 import { raHalfWidthDeg, separationArcsec, wrapRaDeg } from '../../shared/astro/sphere';
 import type { ObjectSummary, objectQuery } from '../../shared/schemas/object';
 import type { Context, GroupActor } from '../context';
-import { refuse } from '../errors';
+import { found, refuse } from '../errors';
 import { decodeCursor, encodeCursor } from './cursor';
+import { liveIdOf } from './live-object';
 import { bigintArray } from './verdict-log';
 
 type ObjectQuery = z.output<typeof objectQuery>;
 
 /** What a cone over the registry may hold; beyond it the person is asked for a smaller radius. */
 const MAX_CONE_OBJECTS = 10_000;
-/** Lists are counted up to here; longer ones are told without a number. */
-const MAX_COUNTED = 1_000_000;
+/** Above this many objects a filtered list is not counted: counting would cost more than the page. */
+const MAX_COUNTED = 100_000;
 const ZONES_PER_DEG = 10;
 const ARCSEC_PER_DEG = 3600;
 /** The window is this much wider than the cone; the separation decides. */
@@ -41,34 +42,64 @@ export async function listObjects(
   query: ObjectQuery,
 ): Promise<{ items: ObjectSummary[]; next: string | null; total: number | null }> {
   return inTransaction(context.database, actor, async (tx) => {
-    const filters = filtersOf(actor, query);
-    if (query.ra !== undefined && query.dec !== undefined && query.radiusArcsec !== undefined) {
-      return conePage(tx, { raDeg: query.ra, decDeg: query.dec, radiusArcsec: query.radiusArcsec }, filters, query);
-    }
-    return sortedPage(tx, filters, query);
+    const filters = await filtersOf(tx, actor, query);
+    const cone = coneOf(query);
+    return cone === null ? sortedPage(tx, filters, query) : conePage(tx, cone, filters, query);
   });
 }
 
-function filtersOf(actor: GroupActor, query: ObjectQuery): SQL[] {
-  const filters = [sql`o.group_id = ${actor.groupId}`, sql`o.merged_into is null`];
+function coneOf({ ra, dec, radiusArcsec }: ObjectQuery): Cone | null {
+  if (ra !== undefined && dec !== undefined && radiusArcsec !== undefined) return { raDeg: ra, decDeg: dec, radiusArcsec };
+  const given = { ra, dec, radiusArcsec };
+  const missing = Object.entries(given).filter(([, value]) => value === undefined);
+  if (missing.length === Object.keys(given).length) return null;
+  refuse('bad-request', 'A cone needs a right ascension, a declination and a radius.', {
+    errors: missing.map(([path]) => ({ path, message: 'is missing' })),
+  });
+}
+
+/** Live objects of a group, as `o`. */
+export function liveObjectsOf(actor: GroupActor): SQL[] {
+  return [sql`o.group_id = ${actor.groupId}`, sql`o.merged_into is null`];
+}
+
+async function filtersOf(tx: Tx, actor: GroupActor, query: ObjectQuery): Promise<SQL[]> {
+  const filters = liveObjectsOf(actor);
   if (query.minEntries !== undefined) filters.push(sql`o.entries >= ${query.minEntries}`);
-  const key = query.name === undefined ? '' : nameKey(query.name);
-  if (key !== '') {
-    const pattern = `%${key.replace(/[\\%_]/g, '\\$&')}%`;
-    filters.push(sql`o.id in (select coalesce(b.merged_into, b.id) from alias a join object b on b.id = a.object_id
-      where a.group_id = ${actor.groupId} and a.retired_at is null and a.key like ${pattern})`);
-  }
+  if (query.name !== undefined && query.name.trim() !== '') filters.push(bearsPartOfName(actor, nameKey(query.name)));
   if (query.catalogue !== undefined) {
-    filters.push(sql`o.id in (select coalesce(b.merged_into, b.id) from entry e join object b on b.id = e.id
-      where e.catalogue_id = (select id from catalogue where group_id = ${actor.groupId} and label = ${query.catalogue}))`);
+    const { rows } = await tx.execute<{ id: number }>(
+      sql`select id from catalogue where group_id = ${actor.groupId} and label = ${query.catalogue}`,
+    );
+    filters.push(standsIn(found(rows[0], `catalogue ${query.catalogue}`).id));
   }
   return filters;
+}
+
+function bearsPartOfName(actor: GroupActor, key: string): SQL {
+  if (key === '') return sql`false`;
+  const pattern = `%${key.replace(/[\\%_]/g, '\\$&')}%`;
+  return sql`o.id in (select ${liveIdOf('b')} from alias a join object b on b.id = a.object_id
+    where a.group_id = ${actor.groupId} and a.retired_at is null and a.key like ${pattern})`;
+}
+
+/** That a live object `o` has an entry of a catalogue: looked up from the object, so that a page can stop at its last row. */
+export function standsIn(catalogueId: number): SQL {
+  return sql`(exists (select 1 from entry e where e.id = o.id and e.catalogue_id = ${catalogueId})
+    or exists (select 1 from object b join entry e on e.id = b.id and e.catalogue_id = ${catalogueId}
+      where b.merged_into = o.id))`;
+}
+
+interface Cone {
+  raDeg: number;
+  decDeg: number;
+  radiusArcsec: number;
 }
 
 /** Live objects within a cone, the nearest first, all of them; refuses a cone that holds too many. */
 export async function objectsInCone(
   tx: Tx,
-  centre: { raDeg: number; decDeg: number; radiusArcsec: number },
+  centre: Cone,
   filters: readonly SQL[],
 ): Promise<(ObjectRow & { sepArcsec: number })[]> {
   const { rows } = await tx.execute<ObjectRow>(sql`
@@ -89,7 +120,7 @@ export async function objectsInCone(
  * The box around a cone: declination zones first (Gray, Nieto-Santisteban & Szalay 2006), then a window in right
  * ascension, in two parts across 0/360, and all of it where the cone touches a pole.
  */
-function windowOf({ raDeg, decDeg, radiusArcsec }: { raDeg: number; decDeg: number; radiusArcsec: number }): SQL[] {
+function windowOf({ raDeg, decDeg, radiusArcsec }: Cone): SQL[] {
   const radiusDeg = (radiusArcsec * WINDOW_PAD) / ARCSEC_PER_DEG;
   const low = Math.max(-90, decDeg - radiusDeg);
   const high = Math.min(90, decDeg + radiusDeg);
@@ -112,7 +143,7 @@ const coneCursor = z.tuple([z.number(), z.number()]);
 
 async function conePage(
   tx: Tx,
-  centre: { raDeg: number; decDeg: number; radiusArcsec: number },
+  centre: Cone,
   filters: readonly SQL[],
   query: ObjectQuery,
 ) {
@@ -159,16 +190,19 @@ async function sortedPage(tx: Tx, filters: readonly SQL[], query: ObjectQuery) {
   return {
     items: await summaries(tx, shown.map((row) => ({ ...row, sepArcsec: null }))),
     next: rows.length > query.limit && last !== undefined ? encodeCursor([last.sortValue, last.number]) : null,
-    total: await countUpTo(tx, filters),
+    // Who turns the pages has seen the number on the first one.
+    total: after === null ? await countUpTo(tx, filters, query) : null,
   };
 }
 
-async function countUpTo(tx: Tx, filters: readonly SQL[]): Promise<number | null> {
+/** Objects under the filters; null when a filter leaves more than can be counted in the time of a page. */
+async function countUpTo(tx: Tx, filters: readonly SQL[], query: ObjectQuery): Promise<number | null> {
+  const isFiltered = (query.name ?? query.catalogue ?? query.minEntries) !== undefined;
   const { rows } = await tx.execute<{ n: number }>(sql`
     select count(*) as n from (select 1 from object o where ${sql.join([...filters], sql` and `)}
-      limit ${MAX_COUNTED + 1}) as counted`);
+      ${isFiltered ? sql`limit ${MAX_COUNTED + 1}` : sql``}) as counted`);
   const n = Number(rows[0]?.n ?? 0);
-  return n > MAX_COUNTED ? null : n;
+  return isFiltered && n > MAX_COUNTED ? null : n;
 }
 
 /** Adds to each object the labels of the catalogues it stands in. */

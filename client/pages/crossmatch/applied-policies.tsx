@@ -6,8 +6,8 @@ import { ConfirmDialog } from '../../components/confirm-dialog';
 import { plural } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { StatusChip } from '../../components/status-chip';
-import { ruleText } from './run-words';
-import { useTakeBackPolicy } from './use-runs';
+import { ruleText } from '../../components/run-words';
+import { useTakeBackPolicy } from '../../api/runs';
 
 type Policy = RunDetail['policies'][number];
 

@@ -3,7 +3,7 @@ import type { Candidate } from '../../../shared/schemas/run';
 import { formatAngle, formatFixed, formatSepArcsec } from '../../components/quantities';
 import { Ruler } from '../../components/ruler';
 import type { Column } from '../../components/table-column';
-import { CandidateVerdict, SideName } from './candidate-parts';
+import { CandidateVerdict, SideName } from '../../components/candidate-parts';
 
 /** Columns of a table of candidates; `addressOf` gives the place on the desk. */
 export function candidateColumns({

@@ -11,9 +11,9 @@ import { EmptyState } from '../../components/empty-state';
 import { LinkButton } from '../../components/link-button';
 import { useTableState } from '../../components/use-table-state';
 import { candidateColumns } from './candidate-columns';
-import { CandidateFilters } from './candidate-filters';
-import { deskAddress, isNarrowed, NO_FILTER, queryOfFilter } from './candidate-filter';
-import { useCandidateFilter } from './use-candidate-filter';
+import { CandidateFilters } from '../../components/candidate-filters';
+import { deskAddress, isNarrowed, NO_FILTER, queryOfFilter } from '../../components/candidate-filter';
+import { useCandidateFilter } from '../../components/use-candidate-filter';
 
 /** Every candidate of a run, filtered and sorted by the address. */
 export function CandidateTable({ run }: { run: RunDetail }) {

@@ -2,8 +2,8 @@ import type { CatalogueSummary } from '../../../shared/schemas/catalogue';
 import { Button } from '../../components/button';
 import { formatCount } from '../../components/quantities';
 import { Stamp } from '../../components/stamp';
-import { movedItem } from './radius-advice';
-import { epochText } from './run-words';
+import { movedItem } from '../../components/radius-advice';
+import { epochText } from '../../components/run-words';
 
 const MOST_CHOSEN = 12;
 

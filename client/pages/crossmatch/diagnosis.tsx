@@ -5,7 +5,7 @@ import { useUrlChoice } from '../../components/use-url-choice';
 import { PairDiagnosis } from './pair-diagnosis';
 import { PolicyPanel } from './policy-panel';
 import { draftSepArcsec, proposedSepArcsec, roundedSep, type RuleDraft } from './policy-rule';
-import { pairId, pairName } from './run-words';
+import { pairId, pairName } from '../../components/run-words';
 
 /** The separations of a run, and the rule whose limit is drawn on them. */
 export function Diagnosis({ run }: { run: RunDetail }) {

@@ -16,7 +16,7 @@ import { TextField } from '../../components/text-field';
 import { CatalogueOrder } from './catalogue-order';
 import type { RunSettings } from './new-run-settings';
 import { RadiusRuler } from './radius-ruler';
-import { useCreateRun } from './use-runs';
+import { useCreateRun } from '../../api/runs';
 
 const FIELDS = ['catalogues', 'radiusArcsec', 'title'] as const;
 

@@ -5,7 +5,7 @@ import { sumBelow } from '../../charts/histogram-shape';
 import { formatCount, formatFixed, formatSepArcsec, formatShare } from '../../components/quantities';
 import { Ruler } from '../../components/ruler';
 import { StatusChip } from '../../components/status-chip';
-import { FEW_PAIRS, pairName } from './run-words';
+import { FEW_PAIRS, pairName } from '../../components/run-words';
 
 /** What a run found between two catalogues; the limit is that of the policy rule and can be dragged. */
 export function PairDiagnosis({

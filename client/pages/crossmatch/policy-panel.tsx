@@ -12,8 +12,8 @@ import { useDebounced } from '../../components/use-debounced';
 import { AppliedPolicies } from './applied-policies';
 import { PolicyForm } from './policy-form';
 import { ruleOfDraft, type RuleDraft } from './policy-rule';
-import { ruleText } from './run-words';
-import { refreshAfterVerdicts, useApplyPolicy, useOpenPolicyJob, usePolicyCount } from './use-runs';
+import { ruleText } from '../../components/run-words';
+import { refreshAfterVerdicts, useApplyPolicy, useOpenPolicyJob, usePolicyCount } from '../../api/runs';
 
 const COUNT_WAIT_MS = 250;
 

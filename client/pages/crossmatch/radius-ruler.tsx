@@ -3,8 +3,8 @@ import { formatFixed, formatSepArcsec, formatShare } from '../../components/quan
 import { Ruler } from '../../components/ruler';
 import { Stamp } from '../../components/stamp';
 import { StatusChip } from '../../components/status-chip';
-import { epochGaps, radiusShares } from './radius-advice';
-import { epochText } from './run-words';
+import { epochGaps, radiusShares } from '../../components/radius-advice';
+import { epochText } from '../../components/run-words';
 import { useCatalogueDetails } from './use-ready-catalogues';
 
 const RULER_END_ARCSEC = 600;

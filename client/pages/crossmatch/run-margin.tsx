@@ -3,8 +3,8 @@ import { MarginNote } from '../../components/margin';
 import { formatCount, formatSepArcsec } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { Stamp } from '../../components/stamp';
-import { epochGaps } from './radius-advice';
-import { epochText, FEW_PAIRS } from './run-words';
+import { epochGaps } from '../../components/radius-advice';
+import { epochText, FEW_PAIRS } from '../../components/run-words';
 
 /** Where a cross-match comes from, and what its numbers mean. */
 export function RunMargin({ run }: { run: RunDetail }) {

@@ -15,11 +15,11 @@ import { Stamp } from '../../components/stamp';
 import { TabPanel, Tabs } from '../../components/tabs';
 import { useUrlChoice } from '../../components/use-url-choice';
 import { CandidateTable } from './candidate-table';
-import { DESK_FILTER, deskAddress } from './candidate-filter';
+import { DESK_FILTER, deskAddress } from '../../components/candidate-filter';
 import { Diagnosis } from './diagnosis';
 import { RunMargin } from './run-margin';
-import { againAddress, runName } from './run-words';
-import { useRun } from './use-runs';
+import { againAddress, runName } from '../../components/run-words';
+import { useRun } from '../../api/runs';
 import { VerdictFigures } from './verdict-figures';
 
 const TABS = ['diagnosis', 'candidates'] as const;

@@ -4,7 +4,7 @@ import { JobStateChip } from '../../components/job-state-chip';
 import { formatCount, formatSepArcsec } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { Stamp } from '../../components/stamp';
-import { HeadCell } from './head-cell';
+import { HeadCell } from '../../components/head-cell';
 
 /** Cross-matches in a table; not virtual, because a group makes few. */
 export function RunTable({ runs }: { runs: readonly RunSummary[] }) {

@@ -14,7 +14,7 @@ import { plural } from '../../components/quantities';
 import { Section } from '../../components/section';
 import { useReadyCatalogues } from './use-ready-catalogues';
 import { RunTable } from './run-table';
-import { useRuns } from './use-runs';
+import { useRuns } from '../../api/runs';
 
 /** All cross-matches of the group. */
 export function RunsPage() {

@@ -3,7 +3,7 @@ import type { RunDetail } from '../../../shared/schemas/run';
 import type { VerdictValue } from '../../../shared/words';
 import { formatCount, formatShare } from '../../components/quantities';
 import { VerdictMark } from '../../components/verdict-mark';
-import { deskAddress, NO_FILTER } from './candidate-filter';
+import { deskAddress, NO_FILTER } from '../../components/candidate-filter';
 
 /** How far the candidates of a run are decided; each number leads to its queue. */
 export function VerdictFigures({ run }: { run: RunDetail }) {

@@ -2,9 +2,9 @@ import type { DeskTask, RunDetail } from '../../../shared/schemas/run';
 import { Popover } from '../../components/popover';
 import { formatCount } from '../../components/quantities';
 import { LinkButton } from '../../components/link-button';
-import { DESK_FILTER, isNarrowed, type CandidateFilter } from '../crossmatch/candidate-filter';
-import { CandidateFilters } from '../crossmatch/candidate-filters';
-import { CandidateVerdict } from '../crossmatch/candidate-parts';
+import { DESK_FILTER, isNarrowed, type CandidateFilter } from '../../components/candidate-filter';
+import { CandidateFilters } from '../../components/candidate-filters';
+import { CandidateVerdict } from '../../components/candidate-parts';
 
 /** Which candidate, how it stands, and how many wait. */
 export function DeskHeading({ seq, task }: { seq: number; task: DeskTask | undefined }) {

@@ -5,12 +5,12 @@ import { MarginNote } from '../../components/margin';
 import { formatFixed, formatSepArcsec } from '../../components/quantities';
 import { RelativeTime } from '../../components/relative-time';
 import { VerdictMark } from '../../components/verdict-mark';
-import { epochGaps } from '../crossmatch/radius-advice';
-import { epochText } from '../crossmatch/run-words';
+import { epochGaps } from '../../components/radius-advice';
+import { epochText } from '../../components/run-words';
 
 /** Verdicts so far on the pair, and what the desk shows. */
 export function DeskMargin({ task, run }: { task: DeskTask; run: RunDetail }) {
-  const { slug } = useGroup();
+  const { slug, can } = useGroup();
   const pair = [task.candidate.a.catalogue, task.candidate.b.catalogue];
   const gaps = epochGaps(run.catalogues.filter(({ label }) => pair.includes(label)));
   return (
@@ -40,11 +40,13 @@ export function DeskMargin({ task, run }: { task: DeskTask; run: RunDetail }) {
         A close position is evidence, not proof. &lsquo;Unsure&rsquo; is a verdict too: the pair leaves the
         queue of undecided ones and can be found again under <Link to={`/g/${slug}/review`}>Review</Link>.
       </MarginNote>
-      <MarginNote title="Keys">
-        <p className="font-mono text-xs">
-          S D U verdict · 1 2 3 grade · N next · B back · Z undo · R remark · ? list
-        </p>
-      </MarginNote>
+      {can('contributor') && (
+        <MarginNote title="Keys">
+          <p className="font-mono text-xs">
+            S D U verdict · 1 2 3 grade · N next · B back · Z undo · R remark · ? list
+          </p>
+        </MarginNote>
+      )}
     </>
   );
 }

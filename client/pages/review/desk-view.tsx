@@ -3,7 +3,7 @@ import type { DeskTask, RunDetail } from '../../../shared/schemas/run';
 import { useGroup } from '../../api/use-group';
 import { Section } from '../../components/section';
 import { useKeys } from '../../components/keys';
-import type { CandidateFilter } from '../crossmatch/candidate-filter';
+import type { CandidateFilter } from '../../components/candidate-filter';
 import { DeskChart } from './desk-chart-view';
 import { deskKeysFor, type DeskAct } from './desk-keys';
 import { isOnItsWay, undoable } from './given-verdicts';

@@ -5,7 +5,7 @@ import { LinkButton } from '../../components/link-button';
 import { Loading } from '../../components/loading';
 import { Page } from '../../components/page';
 import { ProblemNotice } from '../../components/problem-notice';
-import type { CandidateFilter } from '../crossmatch/candidate-filter';
+import type { CandidateFilter } from '../../components/candidate-filter';
 import { DeskHeading, QueueTools } from './desk-heading';
 import { DeskMargin } from './desk-margin';
 import { DeskView } from './desk-view';

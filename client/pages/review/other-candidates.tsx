@@ -1,8 +1,8 @@
 import { Link, useSearchParams } from 'react-router-dom';
 import type { Candidate, DeskTask } from '../../../shared/schemas/run';
 import { formatFixed, formatSepArcsec } from '../../components/quantities';
-import { CandidateVerdict, SideName } from '../crossmatch/candidate-parts';
-import { HeadCell } from '../crossmatch/head-cell';
+import { CandidateVerdict, SideName } from '../../components/candidate-parts';
+import { HeadCell } from '../../components/head-cell';
 import { withSeq } from './queue-place';
 
 /** What else the run found for A and for B, the closest first. */

@@ -1,11 +1,13 @@
 import type { RunDetail } from '../../../shared/schemas/run';
 import { Button } from '../../components/button';
 import { EmptyState } from '../../components/empty-state';
+import { useKeys } from '../../components/keys';
 import { LinkButton } from '../../components/link-button';
 import { Page } from '../../components/page';
-import { DESK_FILTER, isNarrowed, type CandidateFilter } from '../crossmatch/candidate-filter';
-import { CandidateFilters } from '../crossmatch/candidate-filters';
+import { DESK_FILTER, isNarrowed, type CandidateFilter } from '../../components/candidate-filter';
+import { CandidateFilters } from '../../components/candidate-filters';
 import { GivenStrip } from './given-strip';
+import { undoable } from './given-verdicts';
 import type { DeskSession } from './use-desk-session';
 
 /** No candidate is left under the filter: either all is decided, or the filter leaves everything out. */
@@ -20,11 +22,20 @@ export function QueueEnd({
   onFilter: (change: Partial<CandidateFilter>) => void;
   session: DeskSession;
 }) {
+  const canUndo = undoable(session.verdicts.given) !== null;
+  useKeys([{ key: 'z', label: 'Take back the last verdict given here', action: session.verdicts.undo }], {
+    enabled: canUndo,
+  });
   const narrowed = isNarrowed(filter, DESK_FILTER);
   const toRun = <LinkButton to={`../cross-match/${run.run}`}>To the cross-match</LinkButton>;
   return (
     <Page title={`Review of cross-match ${run.run}`} lead={run.title}>
       <GivenStrip verdicts={session.verdicts} goTo={session.goTo} />
+      {canUndo && (
+        <div>
+          <Button onClick={session.verdicts.undo}>Take back the last verdict (Z)</Button>
+        </div>
+      )}
       {narrowed ? (
         <>
           <CandidateFilters run={run} filter={filter} onChange={onFilter} />

@@ -6,7 +6,7 @@ import { MarginNote } from '../../components/margin';
 import { Page } from '../../components/page';
 import { ProblemNotice } from '../../components/problem-notice';
 import { Section } from '../../components/section';
-import { useRuns } from '../crossmatch/use-runs';
+import { useRuns } from '../../api/runs';
 import { ConflictSection } from './conflict-section';
 import { RunQueues } from './run-queues';
 import { useWaiting } from './use-review';

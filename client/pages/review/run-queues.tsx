@@ -7,8 +7,8 @@ import { ProblemNotice } from '../../components/problem-notice';
 import { formatCount, formatSepArcsec, plural } from '../../components/quantities';
 import { Stamp } from '../../components/stamp';
 import { StatusChip } from '../../components/status-chip';
-import { deskAddress, NO_FILTER, type CandidateFilter } from '../crossmatch/candidate-filter';
-import { useRun } from '../crossmatch/use-runs';
+import { deskAddress, NO_FILTER, type CandidateFilter } from '../../components/candidate-filter';
+import { useRun } from '../../api/runs';
 
 /** The queues of one cross-match, each with its number and the way to the desk. */
 export function RunQueues({

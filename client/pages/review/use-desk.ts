@@ -4,7 +4,7 @@ import { candidatePage, deskTask } from '../../../shared/schemas/run';
 import { verdictResult, type NewVerdict } from '../../../shared/schemas/verdict';
 import { keys } from '../../api/query-keys';
 import { groupPath, request } from '../../api/request';
-import { queryOfFilter, type CandidateFilter } from '../crossmatch/candidate-filter';
+import { queryOfFilter, type CandidateFilter } from '../../components/candidate-filter';
 import { givenAfter, undoable } from './given-verdicts';
 
 const deskKey = (group: string, run: number) => [...keys.run(group, run), 'desk'] as const;

@@ -3,7 +3,7 @@ import { conflictList, verdictResult } from '../../../shared/schemas/verdict';
 import { today } from '../../../shared/schemas/today';
 import { keys } from '../../api/query-keys';
 import { groupPath, request } from '../../api/request';
-import { refreshAfterVerdicts } from '../crossmatch/use-runs';
+import { refreshAfterVerdicts } from '../../api/runs';
 
 /** Undecided and crowded candidates by run, for all runs at once. */
 export function useWaiting(group: string) {

@@ -1,4 +1,4 @@
-import { shareWithinRadius } from '../../../shared/astro/errors';
+import { shareWithinRadius } from '../../shared/astro/errors';
 
 /** Epochs further apart than this (years) are warned of: motions are not applied. */
 export const EPOCH_GAP_YEARS = 1;

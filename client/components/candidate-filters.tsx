@@ -1,7 +1,7 @@
 import { useState } from 'react';
-import type { RunDetail } from '../../../shared/schemas/run';
-import { NumberField } from '../../components/number-field';
-import { SelectField } from '../../components/select-field';
+import type { RunDetail } from '../../shared/schemas/run';
+import { NumberField } from './number-field';
+import { SelectField } from './select-field';
 import {
   KIND_FILTERS,
   sepOf,

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { candidateQuery } from '../../../shared/schemas/run';
+import { candidateQuery } from '../../shared/schemas/run';
 import {
   DESK_FILTER,
   deskAddress,

@@ -5,7 +5,7 @@ import {
   useQueryClient,
   type QueryClient,
 } from '@tanstack/react-query';
-import { jobAccepted, jobList } from '../../../shared/schemas/job';
+import { jobAccepted, jobList } from '../../shared/schemas/job';
 import {
   policyCount,
   runAccepted,
@@ -13,9 +13,9 @@ import {
   runList,
   type NewRun,
   type PolicyRule,
-} from '../../../shared/schemas/run';
-import { keys } from '../../api/query-keys';
-import { groupPath, request } from '../../api/request';
+} from '../../shared/schemas/run';
+import { keys } from './query-keys';
+import { groupPath, request } from './request';
 
 /** The cross-matches of the group, the newest first. */
 export function useRuns(group: string) {

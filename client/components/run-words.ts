@@ -1,5 +1,5 @@
-import type { PolicyRule, RunSummary } from '../../../shared/schemas/run';
-import { formatSepArcsec } from '../../components/quantities';
+import type { PolicyRule, RunSummary } from '../../shared/schemas/run';
+import { formatSepArcsec } from './quantities';
 
 /** Below this many pairs a median or a share says little. */
 export const FEW_PAIRS = 50;

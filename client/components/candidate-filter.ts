@@ -1,4 +1,4 @@
-import { VERDICT_VALUES, type VerdictValue } from '../../../shared/words';
+import { VERDICT_VALUES, type VerdictValue } from '../../shared/words';
 
 export const VERDICT_FILTERS = ['any', 'undecided', ...VERDICT_VALUES] as const;
 export type VerdictFilter = 'any' | 'undecided' | VerdictValue;

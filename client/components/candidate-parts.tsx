@@ -1,6 +1,6 @@
-import type { Candidate } from '../../../shared/schemas/run';
-import { Stamp } from '../../components/stamp';
-import { VerdictMark } from '../../components/verdict-mark';
+import type { Candidate } from '../../shared/schemas/run';
+import { Stamp } from './stamp';
+import { VerdictMark } from './verdict-mark';
 
 /** Stamp and designation of one side of a candidate. */
 export function SideName({ side }: { side: Candidate['a'] }) {
