@@ -168,6 +168,11 @@ describe('coneJoin with unusual input', () => {
     expect(coneJoin(a, a, 0.0001, { maxPairs: 90_000 }).a).toHaveLength(90_000);
   });
 
+  it('stops early on a hopeless join instead of filling the memory', () => {
+    const a = { raDeg: new Float64Array(60_000).fill(9), decDeg: new Float64Array(60_000).fill(9) };
+    expect(() => coneJoin(a, a, 1, { maxPairs: 500_000 })).toThrow(TooManyPairs);
+  });
+
   it('says how many pairs it had reached', () => {
     const a = { raDeg: new Float64Array(30_000).fill(1), decDeg: new Float64Array(30_000).fill(1) };
     const b = columns([1, 1], [1, 1]);
@@ -178,7 +183,7 @@ describe('coneJoin with unusual input', () => {
       expect(error).toBeInstanceOf(TooManyPairs);
       expect(error).toMatchObject({ maxPairs: 20_000 });
       expect((error as TooManyPairs).count).toBeGreaterThan(20_000);
-      expect((error as TooManyPairs).count).toBeLessThan(60_000);
+      expect((error as TooManyPairs).count).toBeLessThan(20_100);
     }
   });
 
@@ -206,6 +211,12 @@ describe('long joins', () => {
     expect(seen.length).toBeGreaterThan(3);
     expect(seen).toEqual([...seen].sort((one, two) => one - two));
     expect(seen.at(-1)).toBe(1);
+  });
+
+  it('report the last row also where the other catalogue has nothing', () => {
+    const seen: number[] = [];
+    coneJoin(columns([10, -20], [10, 80]), columns([10, -20]), 1, { onProgress: (done) => seen.push(done) });
+    expect(seen.at(-1)).toBe(2);
   });
 
   it('stop when asked to', () => {

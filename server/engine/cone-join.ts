@@ -16,6 +16,8 @@ export const DEFAULT_MAX_PAIRS = 50_000_000;
 
 /** Rows of A between two looks at progress, cancelling and the number of pairs. */
 const ROWS_PER_CHUNK = 8_192;
+/** The same where rows have very many partners; one row more may overshoot it. */
+const PAIRS_PER_CHUNK = 1_000_000;
 
 export interface JoinLimits {
   /** More pairs than this throw TooManyPairs. */
@@ -53,12 +55,16 @@ export function coneJoin(
   options: JoinOptions = {},
 ): PairColumns {
   const parts: PairColumns[] = [];
+  let reported = 0;
   for (const chunk of coneJoinChunks(a, b, radiusArcsec, options)) {
     if (chunk.pairs.a.length > 0) parts.push(chunk.pairs);
     options.onProgress?.(chunk.doneRows, chunk.totalRows);
+    reported = chunk.doneRows;
     if (options.shouldStop?.())
       throw new JoinStopped(`stopped after ${chunk.doneRows} of ${chunk.totalRows} rows`);
   }
+  // The last rows may lie where B has none.
+  if (reported < a.raDeg.length) options.onProgress?.(a.raDeg.length, a.raDeg.length);
   return concatPairs(parts);
 }
 
@@ -121,12 +127,20 @@ function* joinBuckets(
     const aFrom = buckets.a.start[bucket] as number;
     const aTo = buckets.a.end[bucket] as number;
     if (!prepareGrid(grid, buckets, bucket, radius)) continue;
-    for (let from = aFrom; from < aTo; from += ROWS_PER_CHUNK) {
+    for (let from = aFrom; from < aTo;) {
       const to = Math.min(from + ROWS_PER_CHUNK, aTo);
-      scanRows(buckets.a.records, from, to, grid, radius, buffer);
+      from = scanRows(
+        buckets.a.records,
+        from,
+        to,
+        grid,
+        radius,
+        buffer,
+        Math.min(PAIRS_PER_CHUNK, maxPairs - found + 1),
+      );
       found += buffer.length;
       if (found > maxPairs) throw new TooManyPairs(found, maxPairs);
-      yield { pairs: takePairs(buffer), doneRows: to, totalRows };
+      yield { pairs: takePairs(buffer), doneRows: from, totalRows };
     }
   }
 }

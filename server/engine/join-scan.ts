@@ -14,6 +14,7 @@ import { growPairBuffer, type PairBuffer } from './pair-columns';
 /**
  * Appends the pairs of records `from` to `to` of A with the grid's records of B. A window of RA that runs over 0/360
  * is scanned in two parts. In each part the RA difference is taken without wrapping, so no row of B can pass in both.
+ * Returns the record to go on with: `to`, or an earlier one when there are `enough` pairs already.
  */
 export function scanRows(
   aRecords: Float64Array,
@@ -22,11 +23,13 @@ export function scanRows(
   grid: JoinGrid,
   radius: JoinRadius,
   pairs: PairBuffer,
-): void {
+  enough: number,
+): number {
   const { zoneHalfWidth, cellStart, records, cells, decMin, zonesPerDeg, zones } = grid;
   const { raMin, sectorsPerDeg, firstCell, cellsOfSector } = grid;
   const { paddedDeg } = radius;
   for (let at = from * RECORD_SIZE; at < to * RECORD_SIZE; at += RECORD_SIZE) {
+    if (pairs.length >= enough) return at / RECORD_SIZE;
     const ra = aRecords[at] as number;
     const dec = aRecords[at + 1] as number;
     const zone = zoneIn(dec, decMin, zonesPerDeg, zones);
@@ -51,6 +54,7 @@ export function scanRows(
       testPair(ra, dec, aRecords[at + 2] as number, dRa, dDec, records, other, radius, pairs);
     }
   }
+  return to;
 }
 
 /** The same for a row whose window holds RA 0, or every RA. */

@@ -9,6 +9,9 @@ import { JOB_KIND_WORK } from './kinds';
 const CONCURRENCY = 2;
 const BEAT_EVERY_MS = 2000;
 
+/** The queue's levels of importance in the words of our log. */
+const LOG_LEVELS = { error: 'error', warning: 'warn', info: 'info', debug: 'debug' } as const;
+
 const queuePayload = z.strictObject({ jobId: z.uuid(), groupId: z.number().int() });
 
 /** Starts taking jobs from the queue; `stop` lets running jobs end and hands back the rest. */
@@ -28,7 +31,7 @@ export async function startWorker(context: Context): Promise<{ stop(): Promise<v
     concurrency: CONCURRENCY,
     noHandleSignals: true,
     events,
-    logger: new Logger(() => (level, message) => context.log[level === 'warning' ? 'warn' : level]({ queue: true }, message)),
+    logger: new Logger(() => (level, message) => context.log[LOG_LEVELS[level]]({ queue: true }, message)),
     taskList: {
       [QUEUE_TASK]: (payload) => runJob(context, queuePayload.parse(payload), JOB_KIND_WORK),
     },

@@ -19,7 +19,6 @@ const MIB = 1024 * 1024;
 /** Name of a file as a person may see it again: no path, no control characters. */
 export function displayName(name: string): string {
   const last = name.split(/[\\/]/).at(-1) ?? '';
-  // eslint-disable-next-line no-control-regex -- control characters are what is removed
   const clean = last.replace(/[\u0000-\u001f\u007f]/g, '').trim().slice(0, 200);
   return clean === '' ? 'unnamed' : clean;
 }

@@ -47,7 +47,7 @@ describe('the merged table', () => {
     );
     expect(answer.headers['content-type']).toContain('text/csv');
     expect(answer.headers['content-disposition']).toContain('attachment');
-    return parse(answer.text, { columns: true, record_delimiter: '\r\n' }) as Record<string, string>[];
+    return parse<Record<string, string>>(answer.text, { columns: true, record_delimiter: '\r\n' });
   };
 
   it('has one row for each object, with everything of its sources', async () => {

@@ -1,12 +1,5 @@
-import type { FileColumn } from '../../../shared/schemas/mapping';
 import { SelectField } from '../../components/select-field';
-
-export type Columns = readonly FileColumn[];
-
-export function columnName(columns: Columns, index: number): string {
-  const name = columns[index]?.name ?? '';
-  return name === '' ? `column ${index + 1}` : name;
-}
+import { columnName, type Columns } from './column-name';
 
 /** One column of the file, or none when `none` names that choice. */
 export function ColumnSelect({

@@ -11,6 +11,7 @@ import { numberOrNull } from '../../components/number-field-values';
 import { ProblemNotice } from '../../components/problem-notice';
 import { TextAreaField } from '../../components/text-area-field';
 import { TextField } from '../../components/text-field';
+import { labelFromFileName } from './label-from-file-name';
 import { useCreateCatalogue } from './use-catalogues';
 
 const description = catalogueText.extend({
@@ -19,15 +20,6 @@ const description = catalogueText.extend({
 });
 type Description = z.infer<typeof description>;
 const FIELDS = ['label', 'title', 'description', 'band', 'citation', 'epochYear'] as const;
-
-/** 'lantern optical v2.csv.gz' -> 'lantern-optical-v2': a label to begin with. */
-export function labelFromFileName(name: string): string {
-  const bare = name.replace(/\.(gz|csv|tsv|txt|dat)$/gi, '').replace(/\.(csv|tsv|txt|dat)$/i, '');
-  return bare
-    .replace(/[^A-Za-z0-9_.-]+/g, '-')
-    .replace(/^[^A-Za-z]+/, '')
-    .slice(0, 20);
-}
 
 /** Label, title and the rest; the last step before the import. */
 export function DescribeForm({

@@ -3,7 +3,8 @@ import type { ErrorMeaning } from '../../../shared/words';
 import { NumberField } from '../../components/number-field';
 import { numberOrNull } from '../../components/number-field-values';
 import { SelectField } from '../../components/select-field';
-import { ColumnSelect, type Columns } from './column-select';
+import type { Columns } from './column-name';
+import { ColumnSelect } from './column-select';
 
 type ErrorMapping = NonNullable<ColumnMapping['error']>;
 type Kind = ErrorMapping['kind'];

@@ -1,10 +1,12 @@
 import { useState } from 'react';
 import type { ColumnMapping } from '../../../shared/schemas/mapping';
-import { ColumnSelect, type Columns } from './column-select';
+import type { Columns } from './column-name';
+import { ColumnSelect } from './column-select';
+import { completePosition, type DraftPosition } from './draft-position';
 import { ErrorFields } from './error-fields';
 import { MeasurementFields } from './measurement-fields';
 import { NameFields } from './name-fields';
-import { PositionFields, type DraftPosition, completePosition } from './position-fields';
+import { PositionFields } from './position-fields';
 
 type Rest = Omit<ColumnMapping, 'position'>;
 const NOTHING: Rest = { keyColumn: null, names: [], error: null, properMotion: null, photometry: [], redshift: null };

@@ -3,7 +3,8 @@ import { Button } from '../../components/button';
 import { CheckboxField } from '../../components/checkbox-field';
 import { SelectField } from '../../components/select-field';
 import { TextField } from '../../components/text-field';
-import { ColumnSelect, columnName, type Columns } from './column-select';
+import { columnName, type Columns } from './column-name';
+import { ColumnSelect } from './column-select';
 
 type Measurements = Pick<ColumnMapping, 'properMotion' | 'photometry' | 'redshift'>;
 type Band = ColumnMapping['photometry'][number];

@@ -1,7 +1,8 @@
 import type { ColumnMapping } from '../../../shared/schemas/mapping';
 import { Button } from '../../components/button';
 import { SelectField } from '../../components/select-field';
-import { ColumnSelect, columnName, type Columns } from './column-select';
+import { columnName, type Columns } from './column-name';
+import { ColumnSelect } from './column-select';
 
 const SEPARATORS = [
   { value: '', label: 'one name in the cell' },

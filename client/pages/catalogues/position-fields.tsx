@@ -1,26 +1,11 @@
-import type { ColumnMapping } from '../../../shared/schemas/mapping';
 import { ChoiceField } from '../../components/choice-field';
 import { SelectField } from '../../components/select-field';
-import { ColumnSelect, type Columns } from './column-select';
+import type { Columns } from './column-name';
+import { ColumnSelect } from './column-select';
+import type { DraftPosition } from './draft-position';
 
-type Position = ColumnMapping['position'];
-type RaNotation = Position['raNotation'];
-type DecNotation = Position['decNotation'];
-
-/** A position whose columns may still have to be chosen. */
-export type DraftPosition =
-  | (Omit<Extract<Position, { kind: 'two-columns' }>, 'raColumn' | 'decColumn'> & {
-      raColumn: number | null;
-      decColumn: number | null;
-    })
-  | (Omit<Extract<Position, { kind: 'one-column' }>, 'column'> & { column: number | null });
-
-/** The position once every column is chosen, else null. */
-export function completePosition(draft: DraftPosition): Position | null {
-  if (draft.kind === 'one-column') return draft.column === null ? null : { ...draft, column: draft.column };
-  const { raColumn, decColumn } = draft;
-  return raColumn === null || decColumn === null ? null : { ...draft, raColumn, decColumn };
-}
+type RaNotation = DraftPosition['raNotation'];
+type DecNotation = DraftPosition['decNotation'];
 
 const RA_NOTATIONS: { value: RaNotation; label: string }[] = [
   { value: 'degrees', label: 'degrees (188.736)' },
