@@ -72,9 +72,17 @@ export async function importFigures(server: BenchServer): Promise<Figure[]> {
 async function bareCopySeconds(server: BenchServer, file: string): Promise<number> {
   const client = new pg.Client({ connectionString: server.ownerUrl });
   await client.connect();
+  try {
+    return await medianCopy(client, server, file);
+  } finally {
+    await client.end();
+  }
+}
+
+async function medianCopy(client: pg.Client, server: BenchServer, file: string): Promise<number> {
   const header = spawnSync('head', ['-1', file], { encoding: 'utf8' }).stdout.trim().split(',');
   const sample = spawnSync('sed', ['-n', '2p', file], { encoding: 'utf8' }).stdout.trim().split(',');
-  const columns = header.map((name, i) => `"${name}" ${Number.isNaN(Number(sample[i])) ? 'text' : 'double precision'}`);
+  const columns = header.map((name, i) => `"${name}" ${sample[i] === '' || Number.isNaN(Number(sample[i])) ? 'text' : 'double precision'}`);
   const seconds: number[] = [];
   for (let round = 0; round < 3; round += 1) {
     await client.query(`drop table if exists bare; create table bare (${columns.join(', ')})`);
@@ -84,7 +92,6 @@ async function bareCopySeconds(server: BenchServer, file: string): Promise<numbe
     seconds.push((performance.now() - begin) / 1000);
   }
   await client.query('drop table bare');
-  await client.end();
   return seconds.sort((a, b) => a - b)[1] ?? Number.NaN;
 }
 
