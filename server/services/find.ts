@@ -7,9 +7,7 @@ import type { FindAnswer, findQuery } from '../../shared/schemas/find';
 import type { Context, GroupActor } from '../context';
 import { liveIdOf } from './live-object';
 import { nearMisses } from './near-misses';
-import { objectsInCone } from './object-cone';
-import { liveObjectsOf } from './object-filters';
-import { OBJECT_COLUMNS, summaries, type ObjectRow } from './object-summaries';
+import { liveObjectsOf, OBJECT_COLUMNS, objectsInCone, summaries, type ObjectRow } from './objects';
 
 type FindQuery = z.output<typeof findQuery>;
 
@@ -44,10 +42,7 @@ async function findNumber(tx: Tx, actor: GroupActor, query: FindQuery, number: n
   const { rows } = await tx.execute<ObjectRow>(sql`
     select ${OBJECT_COLUMNS} from object b join object o on o.id = ${liveIdOf('b')}
     where b.group_id = ${actor.groupId} and b.number = ${number}`);
-  const [summary] = await summaries(
-    tx,
-    rows.map((row) => ({ ...row, sepArcsec: null })),
-  );
+  const [summary] = await summaries(tx, rows.map((row) => ({ ...row, sepArcsec: null })));
   const answer = nothing(query.q, 'number');
   if (summary === undefined) return answer;
   return {
@@ -81,10 +76,7 @@ async function findName(tx: Tx, actor: GroupActor, query: FindQuery): Promise<Fi
     from alias a join object b on b.id = a.object_id join object o on o.id = ${liveIdOf('b')}
     where a.group_id = ${actor.groupId} and a.key = ${key} and a.retired_at is null
     order by o.number limit ${query.limit}`);
-  const described = await summaries(
-    tx,
-    rows.map((row) => ({ ...row, sepArcsec: null })),
-  );
+  const described = await summaries(tx, rows.map((row) => ({ ...row, sepArcsec: null })));
   const exact = described.map((summary, i) => ({ ...summary, alias: rows[i]?.alias ?? null }));
   if (exact.length > 0) return { ...answer, exact };
   return { ...answer, nearMisses: await nearMisses(tx, actor, key, query.limit) };

@@ -45,43 +45,33 @@ export class MergedRowWriter {
   private readonly recipe: ExportRecipe;
   private readonly catalogues: { label: string; columns: { index: number; name: string }[] }[];
 
-  constructor(
-    recipe: ExportRecipe,
-    known: readonly { label: string; columns: readonly { name: string }[] }[],
-  ) {
+  constructor(recipe: ExportRecipe, known: readonly { label: string; columns: readonly { name: string }[] }[]) {
     this.recipe = recipe;
-    // The order is the catalogues' own, whatever order the recipe names them in.
+    // The order is the catalogues' own, whatever order the recipe names them in; what is gone is left out.
     this.catalogues = known.flatMap(({ label, columns }) => {
-      const wanted = recipe.catalogues.find((one) => one.label.toLowerCase() === label.toLowerCase());
+      const wanted = recipe.catalogues.find((one) => one.label === label);
       if (wanted === undefined) return [];
-      return [
-        {
-          label,
-          columns: wanted.columns.map((index) => ({ index, name: nameOf(columns[index]?.name, index) })),
-        },
-      ];
+      const chosen = wanted.columns.filter((index) => index < columns.length);
+      return [{ label, columns: chosen.map((index) => ({ index, name: nameOf(columns[index]?.name, index) })) }];
     });
   }
 
-  /** Names of the columns, each once: a name that was there before gets '_2', '_3' and so on. */
   header(): string[] {
     const { recipe, catalogues } = this;
-    return eachOnce([
+    return [
       'object',
       'name',
       ...(recipe.position === 'sexagesimal' ? [] : ['ra_deg', 'dec_deg']),
       ...(recipe.position === 'degrees' ? [] : ['ra', 'dec']),
       'err_arcsec',
       'entries',
-      ...(recipe.aliases === 'one-cell'
-        ? ['aliases']
-        : [...catalogues.map((one) => `${one.label}.aliases`), 'other_aliases']),
+      ...(recipe.aliases === 'one-cell' ? ['aliases'] : [...catalogues.map((one) => `${one.label}.name`), 'other_names']),
       ...(recipe.grades ? ['grade', 'verdicts'] : []),
       ...catalogues.flatMap((one) => [
         ...(recipe.separations ? [`${one.label}.sep_arcsec`] : []),
         ...one.columns.map((column) => `${one.label}.${column.name}`),
       ]),
-    ]);
+    ];
   }
 
   /** The cells of each object, in the order of the header. */
@@ -116,8 +106,7 @@ export class MergedRowWriter {
   }
 
   private nameCells(names: readonly { label: string | null; name: string }[]): Cell[] {
-    const joined = (some: readonly { name: string }[]) =>
-      [...new Set(some.map((one) => one.name))].join(JOINER) || null;
+    const joined = (some: readonly { name: string }[]) => [...new Set(some.map((one) => one.name))].join(JOINER) || null;
     if (this.recipe.aliases === 'one-cell') return [joined(names)];
     const labels = this.catalogues.map((one) => one.label);
     return [
@@ -151,19 +140,8 @@ function lowestGrade(verdicts: readonly { grade: string | null }[]): string | nu
 
 /** One value as it is, several joined, none as an empty cell. */
 function shared(values: readonly string[]): string | null {
-  const joined =
-    values.length > 1 && values.some((value) => value !== '') ? values.join(JOINER) : (values[0] ?? '');
+  const joined = values.length > 1 && values.some((value) => value !== '') ? values.join(JOINER) : (values[0] ?? '');
   return joined === '' ? null : joined;
-}
-
-function eachOnce(names: readonly string[]): string[] {
-  const taken = new Set<string>();
-  return names.map((name) => {
-    let unique = name;
-    for (let i = 2; taken.has(unique); i += 1) unique = `${name}_${i}`;
-    taken.add(unique);
-    return unique;
-  });
 }
 
 function nameOf(name: string | undefined, index: number): string {

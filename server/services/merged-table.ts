@@ -1,21 +1,15 @@
-import { Readable, type Writable } from 'node:stream';
-import { pipeline } from 'node:stream/promises';
 import { sql, type SQL } from 'drizzle-orm';
 import { inTransaction, type Tx } from '../../db/client';
 import type { ExportOptions, ExportPreview, ExportRecipe } from '../../shared/schemas/export';
 import type { Context, GroupActor } from '../context';
-import { refuse } from '../errors';
 import { csvLine } from '../formats/csv-writer';
-import { MergedRowWriter, type MergedObject } from './merged-row';
-import { mergedParts } from './merged-parts';
+import { MergedRowWriter, type MergedMember, type MergedObject, type MergedParts } from './merged-row';
 import { currentRevisionIds } from './near-sources';
-import { liveObjectsOf, standsIn } from './object-filters';
-import { OBJECT_COLUMNS } from './object-summaries';
+import { bornInto } from './objects';
+import { bigintArray } from './verdict-log';
 
 const PAGE_OBJECTS = 2000;
 const PREVIEW_ROWS = 20;
-/** Each download holds a connection; so many leave enough of them to everybody else. */
-const MAX_DOWNLOADS = 4;
 
 interface TableCatalogue {
   label: string;
@@ -36,12 +30,14 @@ async function tableCatalogues(tx: Tx, actor: GroupActor): Promise<TableCatalogu
   return rows;
 }
 
+const liveObjects = (actor: GroupActor) => sql`o.group_id = ${actor.groupId} and o.merged_into is null`;
+
 /** Which catalogues and columns a merged table can have. */
 export async function exportOptions(context: Context, actor: GroupActor): Promise<ExportOptions> {
   return inTransaction(context.database, actor, async (tx) => {
     const catalogues = await tableCatalogues(tx, actor);
     return {
-      objects: await countObjects(tx, liveObjectsOf(actor)),
+      objects: await countObjects(tx, liveObjects(actor)),
       catalogues: catalogues.map(({ label, title, ordinal, columns }) => ({
         label,
         title,
@@ -52,124 +48,159 @@ export async function exportOptions(context: Context, actor: GroupActor): Promis
   });
 }
 
-async function countObjects(tx: Tx, filters: readonly SQL[]): Promise<number> {
-  const { rows } = await tx.execute<{ n: number }>(
-    sql`select count(*) as n from object o where ${sql.join([...filters], sql` and `)}`,
-  );
+async function countObjects(tx: Tx, filter: SQL): Promise<number> {
+  const { rows } = await tx.execute<{ n: number }>(sql`select count(*) as n from object o where ${filter}`);
   return Number(rows[0]?.n ?? 0);
 }
 
-/** A recipe that was held against the group's catalogues. */
-interface Table {
-  writer: MergedRowWriter;
-  /** Which objects stand in it: for its first rows, and for all of them. */
-  first: SQL[];
-  all: SQL[];
-}
-
-async function tableOf(tx: Tx, actor: GroupActor, recipe: ExportRecipe): Promise<Table> {
-  const known = await tableCatalogues(tx, actor);
-  checkRecipe(recipe, known);
-  const live = [...liveObjectsOf(actor), sql`o.entries >= ${recipe.minEntries}`];
-  const first = [...live];
-  const all = [...live];
+/** Which objects stand in the table. */
+function objectFilter(actor: GroupActor, recipe: ExportRecipe, catalogues: readonly TableCatalogue[]): SQL {
+  const filters = [liveObjects(actor), sql`o.entries >= ${recipe.minEntries}`];
   for (const label of recipe.standingIn) {
-    const condition = await standsIn(tx, actor, label);
-    first.push(condition.wide ? condition.each : condition.all);
-    all.push(condition.all);
+    const id = catalogues.find((one) => one.label.toLowerCase() === label.toLowerCase())?.catalogueId ?? 0;
+    filters.push(sql`o.id in (select coalesce(b.merged_into, b.id) from entry e join object b on b.id = e.id
+      where e.catalogue_id = ${id})`);
   }
-  return { writer: new MergedRowWriter(recipe, known), first, all };
+  return sql.join(filters, sql` and `);
 }
-
-/** Refuses a recipe that names what is not there: a kept link must not quietly give another table. */
-function checkRecipe(recipe: ExportRecipe, known: readonly TableCatalogue[]): void {
-  const columnsOf = (label: string) =>
-    known.find((one) => one.label.toLowerCase() === label.toLowerCase())?.columns;
-  const labels = [...recipe.catalogues.map((one) => one.label), ...recipe.standingIn];
-  const missing = labels.find((label) => columnsOf(label) === undefined);
-  if (missing !== undefined) {
-    refuse('bad-request', `The recipe names the catalogue “${missing}”, which is not here or not ready.`, {
-      errors: [{ path: 'recipe', message: `“${missing}” is no catalogue of this group` }],
-    });
-  }
-  for (const { label, columns } of recipe.catalogues) {
-    const beyond = columns.find((index) => index >= (columnsOf(label)?.length ?? 0));
-    if (beyond === undefined) continue;
-    refuse('bad-request', `The recipe names column ${beyond + 1} of ${label}, which has fewer columns.`, {
-      errors: [{ path: 'recipe', message: `${label} has no column ${beyond + 1}` }],
-    });
-  }
-}
-
-const objectsInOrder = (filters: readonly SQL[]) => sql`
-  select ${OBJECT_COLUMNS} from object o where ${sql.join([...filters], sql` and `)} order by o.number`;
 
 /** The header, the number of rows, and the first rows. */
-export async function exportPreview(
-  context: Context,
-  actor: GroupActor,
-  recipe: ExportRecipe,
-): Promise<ExportPreview> {
+export async function exportPreview(context: Context, actor: GroupActor, recipe: ExportRecipe): Promise<ExportPreview> {
   return inTransaction(context.database, actor, async (tx) => {
-    const { writer, first, all } = await tableOf(tx, actor, recipe);
-    const { rows } = await tx.execute<MergedObject & Record<string, unknown>>(
-      sql`${objectsInOrder(first)} limit ${PREVIEW_ROWS}`,
-    );
-    const sample = writer.rows(rows, await mergedParts(tx, actor, rows));
+    const catalogues = await tableCatalogues(tx, actor);
+    const writer = new MergedRowWriter(recipe, catalogues);
+    const filter = objectFilter(actor, recipe, catalogues);
+    const rows = await pageOfRows(tx, actor, writer, filter, 0, PREVIEW_ROWS);
     return {
-      rows: await countObjects(tx, all),
+      rows: await countObjects(tx, filter),
       header: writer.header(),
-      sample: sample.map((cells) => cells.map((cell) => (cell === null ? '' : String(cell)))),
+      sample: rows.cells.map((cells) => cells.map((cell) => (cell === null ? '' : String(cell)))),
     };
   });
 }
 
-let downloads = 0;
-
 /**
- * Writes the merged table as CSV into what `open` gives, under one snapshot: rows do not change while it is read, and
- * memory does not grow with it. `open` is called when nothing can be refused any more. The transaction ends with the
- * reader, also with one who goes away in the middle; an error behind the first byte destroys the output.
+ * The merged table as CSV text, page by page under one snapshot: rows do not change while it is read, and memory
+ * does not grow with it. The transaction ends when the reader stops, for whatever reason.
  */
-export async function streamMergedTable(
-  context: Context,
-  actor: GroupActor,
-  recipe: ExportRecipe,
-  open: () => Writable,
-): Promise<void> {
-  if (downloads >= MAX_DOWNLOADS) {
-    refuse('too-many-requests', `${MAX_DOWNLOADS} merged tables are being downloaded at this moment.`);
-  }
-  downloads += 1;
+export async function* mergedTableCsv(context: Context, actor: GroupActor, recipe: ExportRecipe): AsyncGenerator<string> {
+  const pages = pagesInTransaction(context, actor, recipe);
   try {
-    await inTransaction(
-      context.database,
-      actor,
-      async (tx) => {
-        const chunks = csvChunks(tx, actor, await tableOf(tx, actor, recipe));
-        try {
-          await pipeline(Readable.from(chunks), open());
-        } finally {
-          // A page may still be on its way; the connection must not go to anybody else before it has come.
-          await chunks.return(undefined);
-        }
-      },
-      'repeatable read',
-    );
+    yield* pages.chunks;
   } finally {
-    downloads -= 1;
+    await pages.stop();
   }
 }
 
-async function* csvChunks(tx: Tx, actor: GroupActor, { writer, all }: Table): AsyncGenerator<string, void> {
-  yield csvLine(writer.header());
-  await tx.execute(sql`declare merged_rows no scroll cursor for ${objectsInOrder(all)}`);
+/** A transaction that hands out text while it is open: the reader asks for a chunk, the transaction makes it. */
+function pagesInTransaction(context: Context, actor: GroupActor, recipe: ExportRecipe) {
+  let offer: (chunk: IteratorResult<string, undefined>) => void = () => undefined;
+  let fail: (error: unknown) => void = () => undefined;
+  let wanted: () => void = () => undefined;
+  let stopped = false;
+  let demand = new Promise<void>((resolve) => (wanted = resolve));
+  const give = async (text: string) => {
+    await demand;
+    if (stopped) throw new ReaderStopped();
+    demand = new Promise<void>((resolve) => (wanted = resolve));
+    offer({ done: false, value: text });
+  };
+  const work = inTransaction(context.database, actor, (tx) => writePages(tx, actor, recipe, give), 'repeatable read').then(
+    async () => {
+      await demand;
+      offer({ done: true, value: undefined });
+    },
+    (error: unknown) => {
+      if (!(error instanceof ReaderStopped)) fail(error);
+    },
+  );
+  const next = () =>
+    new Promise<IteratorResult<string, undefined>>((resolve, reject) => {
+      offer = resolve;
+      fail = reject;
+      wanted();
+    });
+  return {
+    chunks: { [Symbol.asyncIterator]: () => ({ next }) },
+    async stop() {
+      stopped = true;
+      wanted();
+      await work;
+    },
+  };
+}
+
+/** Unwinds the transaction of a reader who went away. */
+class ReaderStopped extends Error {}
+
+async function writePages(
+  tx: Tx,
+  actor: GroupActor,
+  recipe: ExportRecipe,
+  give: (text: string) => Promise<void>,
+): Promise<void> {
+  const catalogues = await tableCatalogues(tx, actor);
+  const writer = new MergedRowWriter(recipe, catalogues);
+  const filter = objectFilter(actor, recipe, catalogues);
+  await give(csvLine(writer.header()));
+  let after = 0;
   for (;;) {
-    const { rows } = await tx.execute<MergedObject & Record<string, unknown>>(
-      sql`fetch ${sql.raw(String(PAGE_OBJECTS))} from merged_rows`,
-    );
-    if (rows.length === 0) return;
-    const parts = await mergedParts(tx, actor, rows);
-    yield writer.rows(rows, parts).map(csvLine).join('');
+    const page = await pageOfRows(tx, actor, writer, filter, after, PAGE_OBJECTS);
+    if (page.cells.length > 0) await give(page.cells.map(csvLine).join(''));
+    if (page.cells.length < PAGE_OBJECTS) return;
+    after = page.last;
   }
+}
+
+/** One page of rows behind an object number, each query over the whole page. */
+async function pageOfRows(
+  tx: Tx,
+  actor: GroupActor,
+  writer: MergedRowWriter,
+  filter: SQL,
+  after: number,
+  limit: number,
+): Promise<{ cells: (string | number | null)[][]; last: number }> {
+  const { rows: objects } = await tx.execute<MergedObject & Record<string, unknown>>(sql`
+    select o.id, o.number, o.name, o.ra_deg as "raDeg", o.dec_deg as "decDeg", o.err_arcsec as "errArcsec", o.entries
+    from object o where ${filter} and o.number > ${after} order by o.number limit ${limit}`);
+  if (objects.length === 0) return { cells: [], last: after };
+  const parts = await partsOf(tx, actor, objects.map((one) => one.id));
+  return { cells: writer.rows(objects, parts), last: objects.at(-1)?.number ?? after };
+}
+
+/**
+ * Members, names and verdicts of live objects. Each is looked up by its own index from a plain list of ids and put
+ * together here: joins over a list whose length the planner cannot know end in plans that take the square of the time.
+ */
+async function partsOf(tx: Tx, actor: GroupActor, liveIds: readonly number[]): Promise<MergedParts> {
+  const born = await bornInto(tx, liveIds);
+  const ids = bigintArray(born.keys());
+  const liveOf = (entryId: number) => born.get(entryId) ?? 0;
+  const revisionIds = await currentRevisionIds(tx, actor);
+  const members = await tx.execute<Omit<MergedMember, 'live'> & { entryId: number }>(sql`
+    select s.entry_id as "entryId", c.label, s.ra_deg as "raDeg", s.dec_deg as "decDeg", s.cells
+    from source s
+    join catalogue_revision r on r.id = s.revision_id
+    join catalogue c on c.id = r.catalogue_id
+    where s.entry_id = any(${ids}) and s.revision_id = any(${sql.param(revisionIds)}::int[])
+    order by c.ordinal, s.row_no`);
+  const labelOf = new Map(members.rows.map((member) => [member.entryId, member.label]));
+  const names = await tx.execute<{ entryId: number; byPerson: boolean; name: string }>(sql`
+    select object_id as "entryId", origin = 'person' as "byPerson", name from alias
+    where object_id = any(${ids}) and retired_at is null order by object_id, id`);
+  const verdicts = await tx.execute<{ a: number; b: number; grade: string | null }>(sql`
+    select entry_a as a, entry_b as b, grade from verdict_in_force where entry_a = any(${ids}) and value = 'same'`);
+  return {
+    members: members.rows.map(({ entryId, ...member }) => ({ ...member, live: liveOf(entryId) })),
+    names: names.rows.map(({ entryId, byPerson, name }) => ({
+      live: liveOf(entryId),
+      label: byPerson ? null : (labelOf.get(entryId) ?? null),
+      name,
+    })),
+    // A verdict that leads out of the object was not carried out and does not hold it together.
+    grades: verdicts.rows
+      .filter((one) => liveOf(one.a) === liveOf(one.b))
+      .map((one) => ({ live: liveOf(one.a), grade: one.grade })),
+  };
 }

@@ -111,9 +111,7 @@ function distinct(named: readonly Named[]): Named[] {
 function inOrder(near: readonly Near[]): Near[] {
   const kinds = ['component', 'acronym', 'longer', 'slip'] as const;
   const sorted = near.toSorted(
-    (a, b) =>
-      a.difference.steps - b.difference.steps ||
-      (a.key < b.key ? -1 : a.key > b.key ? 1 : a.objectId - b.objectId),
+    (a, b) => a.difference.steps - b.difference.steps || (a.key < b.key ? -1 : a.key > b.key ? 1 : a.objectId - b.objectId),
   );
   return inTurns(kinds.map((kind) => sorted.filter((one) => one.difference.kind === kind)));
 }

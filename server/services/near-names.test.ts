@@ -37,9 +37,7 @@ describe('what makes two names differ', () => {
 describe('texts one slip away', () => {
   it('are all one step away, and hold every kind of slip', () => {
     const texts = oneSlipAway('wick12');
-    expect(texts).toEqual(
-      expect.arrayContaining(['wik12', 'wwick12', 'wack12', 'wcik12', 'wick123', '2wick12', 'wick1']),
-    );
+    expect(texts).toEqual(expect.arrayContaining(['wik12', 'wwick12', 'wack12', 'wcik12', 'wick123', '2wick12', 'wick1']));
     expect(texts.filter((text) => difference('wick12', text).steps !== 1)).toEqual([]);
     expect(new Set(texts).size).toBe(texts.length);
   });

@@ -25,19 +25,14 @@ export function difference(asked: string, known: string): Difference {
   }
   const [askedSplit, knownSplit] = [splitKey(asked), splitKey(known)];
   if (askedSplit.rest !== '' && askedSplit.rest === knownSplit.rest && steps > 1) {
-    const words =
-      askedSplit.acronym === '' ? 'the same number with an acronym' : 'the same number under another acronym';
+    const words = askedSplit.acronym === '' ? 'the same number with an acronym' : 'the same number under another acronym';
     return { kind: 'acronym', steps, words };
   }
   if (known.startsWith(asked)) {
     return { kind: 'longer', steps, words: `goes on after what was typed: …${known.slice(asked.length)}` };
   }
   if (steps > 1) return { kind: 'slip', steps, words: `${steps} characters differ` };
-  return {
-    kind: 'slip',
-    steps,
-    words: areSwapped(asked, known) ? 'two neighbouring characters are swapped' : oneStep(asked, known),
-  };
+  return { kind: 'slip', steps, words: areSwapped(asked, known) ? 'two neighbouring characters are swapped' : oneStep(asked, known) };
 }
 
 function oneStep(asked: string, known: string): string {
