@@ -8,6 +8,7 @@ import { catalogue, catalogueRevision, storedFile } from '../../db/schema/catalo
 import { job } from '../../db/schema/job';
 import { researchGroup } from '../../db/schema/group';
 import type { GroupActor } from '../../server/context';
+import { coveragePicture } from '../../server/services/coverage';
 import { runJob } from '../../server/services/jobs';
 import { JOB_KIND_WORK } from '../../server/jobs/kinds';
 import { nameKey } from '../../shared/astro/designations';
@@ -131,6 +132,10 @@ async function insertRevision(
       columns,
       frame: 'ICRS',
       state: 'ready',
+      coverage: coveragePicture(
+        Float64Array.from(input.sources, (source) => source.raDeg),
+        Float64Array.from(input.sources, (source) => source.decDeg),
+      ),
       rowsRead: input.sources.length,
       sources: input.sources.length,
       registeredAt: new Date(),
